@@ -1,0 +1,1 @@
+"""Exact numbers, piecewise polynomials, linear algebra and formula trees; no beam words."""

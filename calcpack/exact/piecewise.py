@@ -1,0 +1,219 @@
+"""Piecewise polynomials over the fractions, with a value on each side of every breakpoint."""
+
+from __future__ import annotations
+
+import itertools
+from bisect import bisect_left, bisect_right
+from collections.abc import Callable, Iterable, Sequence
+from dataclasses import dataclass
+from fractions import Fraction
+from typing import Literal
+
+Side = Literal["left", "right"]
+Coefficients = tuple[Fraction, ...]
+
+
+@dataclass(frozen=True)
+class Piecewise:
+    """A function on [a, b]: ``pieces[i]`` holds the coefficients, lowest power first, in
+    t = x - breaks[i] on (breaks[i], breaks[i+1]).
+
+    At a breakpoint the value just left and the value just right may differ; at the two ends only
+    the inner value exists and stands for both. Neighbouring pieces that continue one polynomial are
+    joined, so two equal functions are equal values. The algebra is that of scipy's ``PPoly``, exact.
+
+    >>> tent = Piecewise.from_pieces([(0, 2, (0, 1)), (2, 4, (2, -1))])
+    >>> tent.left(Fraction(2)), tent.right(Fraction(4))
+    (Fraction(2, 1), Fraction(0, 1))
+    """
+
+    breaks: tuple[Fraction, ...]
+    pieces: tuple[Coefficients, ...]
+
+    @staticmethod
+    def from_pieces(
+        parts: Iterable[tuple[Fraction | int, Fraction | int, Sequence[Fraction | int]]],
+    ) -> Piecewise:
+        """Build from (start, end, coefficients in x - start), in order and without gaps.
+
+        Raises:
+            ValueError: no piece of positive length, a gap or an overlap.
+        """
+        breaks: list[Fraction] = []
+        pieces: list[Coefficients] = []
+        for start, end, given in parts:
+            if breaks and breaks[-1] != start:
+                raise ValueError("pieces must follow one another without gap or overlap")
+            coefficients = _trimmed(tuple(Fraction(value) for value in given))
+            if not breaks:
+                breaks.append(Fraction(start))
+            if start == end:
+                continue
+            if end < start:
+                raise ValueError("a piece must run from left to right")
+            if pieces and coefficients == _shifted(pieces[-1], breaks[-1] - breaks[-2]):
+                breaks[-1] = Fraction(end)
+            else:
+                pieces.append(coefficients)
+                breaks.append(Fraction(end))
+        if not pieces:
+            raise ValueError("a function needs a piece of positive length")
+        return Piecewise(tuple(breaks), tuple(pieces))
+
+    @property
+    def degree(self) -> int:
+        return max(len(piece) - 1 for piece in self.pieces)
+
+    def value(self, x: Fraction, side: Side) -> Fraction:
+        """The one-sided value at x in [a, b]; at an end the inner value whatever the side.
+
+        Raises:
+            ValueError: x lies outside [a, b].
+        """
+        index = self._index(x, side)
+        return _evaluated(self.pieces[index], x - self.breaks[index])
+
+    def left(self, x: Fraction) -> Fraction:
+        return self.value(x, "left")
+
+    def right(self, x: Fraction) -> Fraction:
+        return self.value(x, "right")
+
+    def slope(self, x: Fraction, side: Side) -> Fraction:
+        """The one-sided derivative at x; same rules as ``value``."""
+        index = self._index(x, side)
+        piece, t = self.pieces[index], x - self.breaks[index]
+        return _evaluated(tuple(k * value for k, value in enumerate(piece))[1:], t)
+
+    def _index(self, x: Fraction, side: Side) -> int:
+        if not self.breaks[0] <= x <= self.breaks[-1]:
+            raise ValueError(f"{x} lies outside {self.breaks[0]} to {self.breaks[-1]}")
+        position = (bisect_left if side == "left" else bisect_right)(self.breaks, x) - 1
+        return min(max(position, 0), len(self.pieces) - 1)
+
+    def __add__(self, other: Piecewise) -> Piecewise:
+        return _combined(self, other, _added)
+
+    def __mul__(self, factor: Fraction | int) -> Piecewise:
+        return self.mapped(lambda piece: tuple(factor * value for value in piece))
+
+    def __neg__(self) -> Piecewise:
+        return self * -1
+
+    def __sub__(self, other: Piecewise) -> Piecewise:
+        return self + -other
+
+    def __truediv__(self, divisor: Fraction | int) -> Piecewise:
+        return self * (Fraction(1) / divisor)
+
+    def mapped(self, change: Callable[[Coefficients], Coefficients]) -> Piecewise:
+        """The same breakpoints with every piece's coefficients changed."""
+        return Piecewise.from_pieces(
+            (start, end, change(piece))
+            for start, end, piece in zip(self.breaks, self.breaks[1:], self.pieces, strict=False)
+        )
+
+    def zeros(self) -> tuple[Fraction, ...]:
+        """Stations strictly inside a piece where the function changes sign; exact for degree 1.
+
+        Raises:
+            ValueError: a piece is of higher degree.
+        """
+        found = []
+        for start, end, piece in zip(self.breaks, self.breaks[1:], self.pieces, strict=False):
+            if len(piece) > 2:
+                raise ValueError("zeros are exact for straight pieces only")
+            if len(piece) == 2:
+                zero = start - piece[0] / piece[1]
+                if start < zero < end:
+                    found.append(zero)
+        return tuple(found)
+
+    def integral(self, start: Fraction, end: Fraction) -> Fraction:
+        """The exact integral from start to end, both in [a, b].
+
+        >>> Piecewise.from_pieces([(0, 2, (0, 1))]).integral(Fraction(0), Fraction(2))
+        Fraction(2, 1)
+        """
+        total = Fraction(0)
+        for left, right, piece in zip(self.breaks, self.breaks[1:], self.pieces, strict=False):
+            low, high = max(left, start), min(right, end)
+            if low < high:
+                primitive = (Fraction(0), *(v / (k + 1) for k, v in enumerate(piece)))
+                total += _evaluated(primitive, high - left) - _evaluated(primitive, low - left)
+        return total
+
+    def signed_runs(self) -> tuple[tuple[Fraction, Fraction, int], ...]:
+        """Stretches (start, end, sign) between breakpoints and zeros; sign is that of the stretch."""
+        stops = sorted({*self.breaks, *self.zeros()})
+        runs = []
+        for start, end in itertools.pairwise(stops):
+            middle = self.value((start + end) / 2, "left")
+            runs.append((start, end, (middle > 0) - (middle < 0)))
+        return tuple(runs)
+
+    def areas(self) -> tuple[Fraction, Fraction]:
+        """The areas of the positive parts and of the negative parts (the second is <= 0).
+
+        >>> Piecewise.from_pieces([(0, 3, (1, -1))]).areas()
+        (Fraction(1, 2), Fraction(-2, 1))
+        """
+        positive = negative = Fraction(0)
+        for start, end, sign in self.signed_runs():
+            area = self.integral(start, end)
+            if sign > 0:
+                positive += area
+            else:
+                negative += area
+        return positive, negative
+
+
+def _trimmed(piece: Coefficients) -> Coefficients:
+    end = len(piece)
+    while end > 1 and not piece[end - 1]:
+        end -= 1
+    return piece[:end] or (Fraction(0),)
+
+
+def _evaluated(piece: Sequence[Fraction], t: Fraction) -> Fraction:
+    total = Fraction(0)
+    for coefficient in reversed(piece):
+        total = total * t + coefficient
+    return total
+
+
+def _shifted(piece: Coefficients, by: Fraction) -> Coefficients:
+    """The same polynomial in a variable whose origin lies ``by`` further right (Horner's scheme)."""
+    result = list(piece)
+    for low in range(len(result) - 1):
+        for power in range(len(result) - 2, low - 1, -1):
+            result[power] += by * result[power + 1]
+    return tuple(result)
+
+
+def _added(one: Coefficients, two: Coefficients) -> Coefficients:
+    size = max(len(one), len(two))
+    padding = (Fraction(0),) * size
+    return tuple(a + b for a, b in zip((one + padding)[:size], (two + padding)[:size], strict=True))
+
+
+def _combined(
+    one: Piecewise, two: Piecewise, change: Callable[[Coefficients, Coefficients], Coefficients]
+) -> Piecewise:
+    if (one.breaks[0], one.breaks[-1]) != (two.breaks[0], two.breaks[-1]):
+        raise ValueError("both functions must cover the same stretch")
+    stops = sorted({*one.breaks, *two.breaks})
+    parts = []
+    for start, end in itertools.pairwise(stops):
+        first, second = one._index(start, "right"), two._index(start, "right")
+        parts.append(
+            (
+                start,
+                end,
+                change(
+                    _shifted(one.pieces[first], start - one.breaks[first]),
+                    _shifted(two.pieces[second], start - two.breaks[second]),
+                ),
+            )
+        )
+    return Piecewise.from_pieces(parts)

@@ -1,0 +1,1 @@
+"""Frozen statements of what the engineer asked: beam, loads, effects, cover."""

@@ -1,0 +1,162 @@
+"""The beam: supports, releases and sections on a line of stations."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from fractions import Fraction
+from functools import cached_property
+from typing import Literal
+
+SupportKind = Literal["pin", "roller", "fixed", "guided"]
+ReleaseKind = Literal["hinge", "slide"]
+Face = Literal["left", "right"]
+
+
+@dataclass(frozen=True)
+class Typed:
+    """A station that stands in calc.toml at ``path``."""
+
+    path: str
+
+
+@dataclass(frozen=True)
+class Datum:
+    """The left end of the beam: station 0 by definition."""
+
+
+@dataclass(frozen=True)
+class Beyond:
+    """A station the length typed at ``path`` beyond the support ``previous`` ("": the left end)."""
+
+    previous: str
+    path: str
+
+
+@dataclass(frozen=True)
+class Tenth:
+    """A station at ``tenths`` tenths of the way from one support to the next."""
+
+    start: str
+    end: str
+    tenths: int
+
+
+Source = Typed | Datum | Beyond | Tenth
+
+
+@dataclass(frozen=True)
+class Support:
+    """A support; ``face`` is the side of a release at the same station that it holds, else None."""
+
+    name: str
+    at: Fraction
+    kind: SupportKind
+    source: Source
+    face: Face | None = None
+
+    @property
+    def holds_vertical(self) -> bool:
+        return self.kind != "guided"
+
+    @property
+    def holds_rotation(self) -> bool:
+        return self.kind in ("fixed", "guided")
+
+
+@dataclass(frozen=True)
+class Release:
+    """A hinge passes no moment, a slide no shear."""
+
+    name: str
+    at: Fraction
+    kind: ReleaseKind
+    source: Source
+
+
+@dataclass(frozen=True)
+class Section:
+    """A place of interest; ``name`` is "" where the engineer gave only a station."""
+
+    name: str
+    at: Fraction
+    source: Source
+
+
+@dataclass(frozen=True)
+class Station:
+    """All that stands at one place of the beam; ``name`` is what a sheet calls it."""
+
+    at: Fraction
+    name: str
+    source: Source
+    support: Support | None = None
+    release: Release | None = None
+
+
+@dataclass(frozen=True)
+class Beam:
+    """A straight beam from station 0 to ``length``; supports, releases and sections in order.
+
+    Stations are in the calculation's unit of length. ``end`` says where the length comes from.
+
+    >>> Beam(Fraction(10), (Support("A", Fraction(0), "fixed", Typed("beam.supports[0].at")),),
+    ...      (), (), Typed("beam.length")).station("A").at
+    Fraction(0, 1)
+    """
+
+    length: Fraction
+    supports: tuple[Support, ...]
+    releases: tuple[Release, ...]
+    sections: tuple[Section, ...]
+    end: Source
+
+    @cached_property
+    def stations(self) -> tuple[Station, ...]:
+        """The key stations in order: ends, supports, releases, sections; one per place.
+
+        A place is called after its support, else its release, else its section.
+        """
+        found: dict[Fraction, Station] = {}
+        for at, name, source, support, release in self._places():
+            known = found.get(at)
+            if known is None:
+                found[at] = Station(at, name, source, support, release)
+            else:
+                found[at] = Station(
+                    at,
+                    known.name or name,
+                    known.source if known.name or not name else source,
+                    known.support or support,
+                    known.release or release,
+                )
+        return tuple(found[at] for at in sorted(found))
+
+    def _places(
+        self,
+    ) -> Iterator[tuple[Fraction, str, Source, Support | None, Release | None]]:
+        for support in self.supports:
+            yield support.at, support.name, support.source, support, None
+        for release in self.releases:
+            yield release.at, release.name, release.source, None, release
+        for section in self.sections:
+            yield section.at, section.name, section.source, None, None
+        yield Fraction(0), "", Datum(), None, None
+        yield self.length, "", self.end, None, None
+
+    @cached_property
+    def _by_name(self) -> dict[str, Fraction]:
+        return {name: at for at, name, *_ in self._places() if name}
+
+    @cached_property
+    def _by_place(self) -> dict[Fraction, Station]:
+        return {station.at: station for station in self.stations}
+
+    def station(self, place: str | Fraction) -> Station:
+        """The key station of that name, or at that place.
+
+        Raises:
+            KeyError: no support, release, section or end there.
+        """
+        at = self._by_name[place] if isinstance(place, str) else place
+        return self._by_place[at]

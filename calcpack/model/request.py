@@ -1,0 +1,122 @@
+"""What the engineer asks for, and the calculation as a whole."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from datetime import date
+from fractions import Fraction
+from typing import Any, Literal
+
+from calcpack.model.beam import Beam, Face
+from calcpack.model.loads import MovingLoad
+
+EffectKind = Literal["reaction", "moment reaction", "shear", "moment"]
+Paper = Literal["letter", "A4"]
+Status = Literal["For review", "Issued"]
+
+
+@dataclass(frozen=True)
+class Effect:
+    """A quantity whose influence line is wanted.
+
+    Attributes:
+        kind: reaction (upward +), moment reaction (anticlockwise on the beam +), shear (+ when
+            the outside forces left of the cut push up) or moment (sagging +).
+        at: name of the place, or its station as text where it has none.
+        station: where it is.
+        face: the side of the place at which the beam is cut, where two values exist; else None.
+
+    >>> Effect("shear", "B", Fraction(40), "left").label
+    'shear at B, left face'
+    """
+
+    kind: EffectKind
+    at: str
+    station: Fraction
+    face: Face | None = None
+
+    @property
+    def label(self) -> str:
+        return f"{self.kind} at {self.at}" + (f", {self.face} face" if self.face else "")
+
+    @property
+    def key(self) -> str:
+        """A stable name for step keys, such as ``shear/B/left``."""
+        return "/".join(part for part in (self.kind, self.at, self.face or "") if part)
+
+
+@dataclass(frozen=True)
+class Signature:
+    by: str = ""
+    on: date | None = None
+
+
+@dataclass(frozen=True)
+class Revision:
+    mark: str
+    on: date | None
+    text: str
+
+
+@dataclass(frozen=True)
+class Cover:
+    title: str
+    number: str = ""
+    project: str = ""
+    client: str = ""
+    prepared: Signature = Signature()
+    checked: Signature = Signature()
+    approved: Signature = Signature()
+    revisions: tuple[Revision, ...] = ()
+
+    @property
+    def latest(self) -> date | None:
+        """The latest date on the cover: the date of the document."""
+        signed = (self.prepared.on, self.checked.on, self.approved.on)
+        days = [*signed, *(revision.on for revision in self.revisions)]
+        return max((day for day in days if day is not None), default=None)
+
+
+@dataclass(frozen=True)
+class Package:
+    status: Status = "For review"
+    paper: Paper = "letter"
+
+
+@dataclass(frozen=True)
+class Assumption:
+    text: str
+    basis: str = ""
+    open: bool = False
+
+
+@dataclass(frozen=True)
+class Entry:
+    """One value of the data echo: where, what was typed (or the default), and which of the two."""
+
+    path: str
+    label: str
+    said: str
+    unit: str
+    entered: bool
+
+
+@dataclass(frozen=True)
+class Calculation:
+    """One calc.toml, read and checked.
+
+    ``plain`` is the file as plain JSON data without ``cover`` (for the digest); ``inputs`` gives
+    the exact value of every number a formula may cite, by its path; ``echo`` lists every value.
+    """
+
+    units: str
+    cover: Cover
+    package: Package
+    assumptions: tuple[Assumption, ...]
+    beam: Beam
+    effects: tuple[Effect, ...]
+    moving: tuple[MovingLoad, ...]
+    plain: Mapping[str, Any]
+    inputs: Mapping[str, Fraction]
+    echo: tuple[Entry, ...]
