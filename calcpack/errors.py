@@ -43,4 +43,4 @@ class OutputFailed(CalcpackError):
 
 
 class ProgramFault(CalcpackError):
-    """Something that the methods promise did not happen: a fault of the program, not of the input."""
+    """What the methods promise did not happen: a fault of the program, not of the input."""

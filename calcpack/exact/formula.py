@@ -1,4 +1,4 @@
-"""Formula trees: one tree from which the symbols, the numbers and the result of a step are printed."""
+"""Formula trees: the symbols, the numbers and the result of a step come from one tree."""
 
 from __future__ import annotations
 
@@ -28,7 +28,7 @@ class Symbol:
 
 
 class Formula:
-    """A formula; built with + - * / from leaves, and read by ``write``, ``evaluate`` and ``leaves``."""
+    """A formula, built from leaves with + - * /; see ``write``, ``evaluate`` and ``leaves``."""
 
     def __add__(self, other: Formula) -> Formula:
         return Sum((*_terms(self), *_terms(other)))

@@ -12,7 +12,7 @@ Row = Mapping[int, Fraction]
 
 @dataclass(frozen=True)
 class Reduced:
-    """A matrix in reduced row echelon form: per pivot column its row (pivot 1, zero in other pivots)."""
+    """A matrix in reduced row echelon form: per pivot column its row (1 there, 0 in others)."""
 
     columns: int
     rows: Mapping[int, Row]

@@ -20,7 +20,7 @@ class Piecewise:
 
     At a breakpoint the value just left and the value just right may differ; at the two ends only
     the inner value exists and stands for both. Neighbouring pieces that continue one polynomial are
-    joined, so two equal functions are equal values. The algebra is that of scipy's ``PPoly``, exact.
+    joined, so two equal functions are equal values. The algebra is closed, as with scipy's PPoly.
 
     >>> tent = Piecewise.from_pieces([(0, 2, (0, 1)), (2, 4, (2, -1))])
     >>> tent.left(Fraction(2)), tent.right(Fraction(4))
@@ -144,7 +144,7 @@ class Piecewise:
         return total
 
     def signed_runs(self) -> tuple[tuple[Fraction, Fraction, int], ...]:
-        """Stretches (start, end, sign) between breakpoints and zeros; sign is that of the stretch."""
+        """Stretches (start, end, sign of the function there) between breakpoints and zeros."""
         stops = sorted({*self.breaks, *self.zeros()})
         runs = []
         for start, end in itertools.pairwise(stops):
@@ -183,7 +183,7 @@ def _evaluated(piece: Sequence[Fraction], t: Fraction) -> Fraction:
 
 
 def _shifted(piece: Coefficients, by: Fraction) -> Coefficients:
-    """The same polynomial in a variable whose origin lies ``by`` further right (Horner's scheme)."""
+    """The same polynomial with its origin ``by`` further right (Horner's scheme)."""
     result = list(piece)
     for low in range(len(result) - 1):
         for power in range(len(result) - 2, low - 1, -1):
