@@ -247,5 +247,8 @@ def write(formula: Formula, notation: Notation, leaf: Callable[[Leaf | Variable]
                 return notation.quotient.format(
                     write(top, notation, leaf), write(bottom, notation, leaf)
                 )
-            return notation.quotient.format(grouped(top, tight=False), grouped(bottom))
+            above = write(top, notation, leaf)
+            if isinstance(top, Sum) and len(top.terms) > 1:
+                above = notation.group.format(above)
+            return notation.quotient.format(above, grouped(bottom))
     raise TypeError(f"{formula!r} cannot be written")

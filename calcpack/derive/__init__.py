@@ -1,0 +1,1 @@
+"""Why each number is right: steps whose printed digits close."""

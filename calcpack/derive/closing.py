@@ -1,0 +1,82 @@
+"""How many decimals each number is printed with, so that every printed equation closes."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from fractions import Fraction
+
+from calcpack.derive.steps import STEP, Step, number_text
+from calcpack.exact.formula import Leaf, evaluate, gradient, leaves
+from calcpack.exact.numbers import MOST_SIGNIFICANT_DIGITS, significant_digits
+
+
+def closing_decimals(
+    steps: Sequence[Step], start: Mapping[str, int | None]
+) -> dict[str, int | None]:
+    """Decimals by origin with which every step's printed digits give its printed result.
+
+    The steps are walked from last to first. While the printed operands of a step miss its printed
+    result by more than one unit of the result's last digit, the operand that can be wrong most
+    (its partial derivative times one unit of its own last digit) gets one more decimal, everywhere
+    it is printed; beyond 15 significant digits it is printed as a fraction. An operand's new
+    decimals may disturb a later step that held by luck, so the walk is repeated until nothing
+    changes; decimals only grow, so it ends.
+
+    Args:
+        steps: in the order of the package.
+        start: the decimals to begin with, by origin, for every input cited and every step.
+
+    Returns:
+        Decimals by origin; None means: printed as a fraction.
+    """
+    decimals = dict(start)
+    changed = True
+    while changed:
+        changed = False
+        for step in reversed(steps):
+            while step.value is not None and not closes(step, decimals):
+                refined = _weakest(step, decimals)
+                decimals[refined] = _one_more(_value(step, refined), decimals[refined])
+                changed = True
+    return decimals
+
+
+def closes(step: Step, decimals: Mapping[str, int | None]) -> bool:
+    """Whether the printed operands give the printed result within one unit of its last digit."""
+    assert step.value is not None
+    own = decimals[STEP + step.key]
+    result = Fraction(number_text(step.value, own))
+    try:
+        from_digits = evaluate(step.formula, lambda leaf: _as_printed(leaf, decimals))
+    except ZeroDivisionError:
+        return False
+    unit = Fraction(0) if own is None else Fraction(1, 10**own)
+    return abs(from_digits - result) <= unit
+
+
+def _as_printed(leaf: Leaf, decimals: Mapping[str, int | None]) -> Fraction:
+    if not leaf.origin:
+        return leaf.value
+    return Fraction(number_text(leaf.value, decimals[leaf.origin]))
+
+
+def _weakest(step: Step, decimals: Mapping[str, int | None]) -> str:
+    """The operand whose rounding weighs most; exact derivatives, so that no bottom is zero."""
+    weights = {
+        origin: abs(slope) / Fraction(10) ** places
+        for origin, slope in gradient(step.formula, lambda leaf: leaf.value).items()
+        if (places := decimals[origin]) is not None
+        and Fraction(number_text(_value(step, origin), places)) != _value(step, origin)
+    }
+    return max(weights, key=lambda origin: weights[origin])
+
+
+def _value(step: Step, origin: str) -> Fraction:
+    return next(leaf.value for leaf in leaves(step.formula) if leaf.origin == origin)
+
+
+def _one_more(value: Fraction, decimals: int | None) -> int | None:
+    assert decimals is not None
+    if significant_digits(number_text(value, decimals + 1)) > MOST_SIGNIFICANT_DIGITS:
+        return None
+    return decimals + 1

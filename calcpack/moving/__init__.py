@@ -1,0 +1,1 @@
+"""Where the loads stand: the effect at one place, and the place that governs."""

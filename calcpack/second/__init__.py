@@ -1,0 +1,1 @@
+"""Second methods: the same influence lines and placements found again, another way."""

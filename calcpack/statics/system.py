@@ -1,0 +1,154 @@
+"""The beam cut at its releases into bodies, with every unknown that acts on them."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from fractions import Fraction
+from typing import Literal
+
+from calcpack.exact.formula import Symbol
+from calcpack.model.beam import Beam, Station
+from calcpack.model.request import Effect
+
+LETTERS = {"reaction": "R", "moment reaction": "C", "shear": "V", "moment": "M"}
+EQUATIONS_OF_BODY = 2
+
+
+def symbol_of(effect: Effect) -> Symbol:
+    """R a reaction, C the couple of a support (moment reaction), V a shear, M a moment.
+
+    >>> str(symbol_of(Effect("shear", "B", Fraction(40), "left")))
+    'V_B,left'
+    """
+    return Symbol(LETTERS[effect.kind], effect.at, effect.face or "")
+
+
+@dataclass(frozen=True)
+class Action:
+    """An unknown as it acts on one body.
+
+    Attributes:
+        unknown: the force or couple.
+        up: +1 or -1 where it is a force that pushes this body up or down when positive; else 0.
+        clockwise: +1 or -1 where it is a couple that turns this body so when positive; else 0.
+        edge: -1 at the release where the body starts, +1 where it ends, 0 at a support.
+    """
+
+    unknown: Effect
+    up: int
+    clockwise: int
+    edge: Literal[-1, 0, 1]
+
+    @property
+    def station(self) -> Fraction:
+        return self.unknown.station
+
+
+@dataclass(frozen=True)
+class Body:
+    """A piece of the beam between two cuts, or, without length, the pin of a hinge on a support."""
+
+    start: Fraction
+    end: Fraction
+    start_name: str
+    end_name: str
+    actions: tuple[Action, ...]
+
+    @property
+    def name(self) -> str:
+        return f"pin at {self.end_name}" if self.is_pin else f"{self.start_name}-{self.end_name}"
+
+    @property
+    def is_pin(self) -> bool:
+        return self.start == self.end
+
+    @property
+    def equations(self) -> int:
+        """Equations of equilibrium it offers: forces and moments, for a pin forces only."""
+        return 1 if self.is_pin else EQUATIONS_OF_BODY
+
+
+@dataclass(frozen=True)
+class System:
+    """The bodies from left to right and the unknowns in the order in which they are met."""
+
+    bodies: tuple[Body, ...]
+    unknowns: tuple[Effect, ...]
+
+
+def place_name(beam: Beam, at: Fraction) -> str:
+    """What a sheet calls the key station: its name, else the end of the beam it is.
+
+    >>> place_name(Beam(Fraction(4), (), (), (), None), Fraction(4))
+    'right end'
+    """
+    name = beam.station(at).name
+    if name:
+        return name
+    if at in (0, beam.length):
+        return "right end" if at else "left end"
+    return str(at)
+
+
+def cut_into_bodies(beam: Beam) -> System:
+    """Cut the beam at every release and name what acts on each piece.
+
+    A pin, roller or fixed support pushes with a force, a fixed or guided support holds with a
+    couple, a hinge passes a shear, a slide a moment. A hinge over a support that holds no
+    rotation has its pin as a body of its own, on which the reaction acts; any other support at a
+    release acts on the face that it names.
+    """
+    bodies: list[Body] = []
+    start = Fraction(0)
+    actions: list[Action] = []
+    for station in beam.stations:
+        if station.release is None:
+            actions += _support_actions(station)
+            continue
+        on_left, pin, on_right = _release_actions(station)
+        bodies.append(_body(beam, start, station.at, [*actions, *on_left]))
+        if pin:
+            bodies.append(_body(beam, station.at, station.at, pin))
+        start, actions = station.at, on_right
+    bodies.append(_body(beam, start, beam.length, actions))
+    unknowns = dict.fromkeys(action.unknown for body in bodies for action in body.actions)
+    return System(tuple(bodies), tuple(unknowns))
+
+
+def _body(beam: Beam, start: Fraction, end: Fraction, actions: list[Action]) -> Body:
+    return Body(start, end, place_name(beam, start), place_name(beam, end), tuple(actions))
+
+
+def _support_actions(station: Station) -> Iterator[Action]:
+    support = station.support
+    if support is None:
+        return
+    if support.holds_vertical:
+        yield Action(Effect("reaction", support.name, support.at), 1, 0, 0)
+    if support.holds_rotation:
+        yield Action(Effect("moment reaction", support.name, support.at), 0, -1, 0)
+
+
+def _release_actions(station: Station) -> tuple[list[Action], list[Action], list[Action]]:
+    """What acts at a release on the body to the left, on the pin, and on the body to the right."""
+    release, support = station.release, station.support
+    assert release is not None
+    held = list(_support_actions(station))
+    if held and support is not None and support.face is None:
+        left = Effect("shear", station.name, station.at, "left")
+        right = Effect("shear", station.name, station.at, "right")
+        return (
+            [Action(left, -1, 0, 1)],
+            [Action(left, 1, 0, -1), *held, Action(right, -1, 0, 1)],
+            [Action(right, 1, 0, -1)],
+        )
+    if release.kind == "hinge":
+        passed = Effect("shear", release.name, station.at)
+        end, beginning = Action(passed, -1, 0, 1), Action(passed, 1, 0, -1)
+    else:
+        passed = Effect("moment", release.name, station.at)
+        end, beginning = Action(passed, 0, -1, 1), Action(passed, 0, 1, -1)
+    held_left = held if support is not None and support.face == "left" else []
+    held_right = held if support is not None and support.face == "right" else []
+    return [*held_left, end], [], [beginning, *held_right]
