@@ -1,0 +1,7 @@
+"""``python -m calcpack``."""
+
+import sys
+
+from calcpack.cli import main
+
+sys.exit(main())

@@ -1,0 +1,98 @@
+"""The command line: ``calcpack solve`` and ``calcpack issue``."""
+
+from __future__ import annotations
+
+import argparse
+import os
+import sys
+import tempfile
+from collections.abc import Sequence
+from pathlib import Path
+
+from calcpack.errors import CalcpackError, Disagreement, InputRefused, OutputFailed, Problem
+
+DONE, DISAGREES, REFUSED, FAILED = 0, 1, 2, 3
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run one command.
+
+    Returns:
+        0 done; 1 a check did not hold; 2 input refused, one line per fault on standard error;
+        3 disk, kernel or typesetter failed. After 2 or 3 nothing has been written.
+    """
+    chosen = _parser().parse_args(arguments)
+    try:
+        chosen.run(chosen)
+    except InputRefused as refused:
+        for problem in refused.problems:
+            print(problem, file=sys.stderr)
+        return REFUSED
+    except Disagreement as error:
+        print(f"calcpack: {error}", file=sys.stderr)
+        return DISAGREES
+    except (CalcpackError, OSError) as error:
+        print(f"calcpack: {error}", file=sys.stderr)
+        return FAILED
+    return DONE
+
+
+def _parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="calcpack", description="Checkable calculation packages for beams under moving loads."
+    )
+    commands = parser.add_subparsers(required=True, metavar="COMMAND")
+    solve = commands.add_parser("solve", help="compute a calc.toml and print what was found")
+    solve.add_argument("calculation", type=Path, metavar="CALC.toml")
+    solve.add_argument("--json", action="store_true", help="print results.json")
+    solve.set_defaults(run=_solve)
+    issue = commands.add_parser("issue", help="make the package of a calculation's folder")
+    issue.add_argument("folder", type=Path, metavar="FOLDER")
+    issue.add_argument("--out", type=Path, metavar="PDF", help="default: FOLDER/package.pdf")
+    issue.set_defaults(run=_issue)
+    return parser
+
+
+def _solve(chosen: argparse.Namespace) -> None:
+    from calcpack.intake import read_file
+    from calcpack.render.text import to_text
+    from calcpack.results import as_bytes, results
+    from calcpack.solution import solve
+
+    solution = solve(read_file(chosen.calculation))
+    found = as_bytes(results(solution)) if chosen.json else to_text(solution).encode()
+    sys.stdout.buffer.write(found)
+
+
+def _issue(chosen: argparse.Namespace) -> None:
+    import nbformat
+
+    from calcpack.export.exporter import issue
+    from calcpack.export.templates import template_folder
+
+    own = chosen.folder / "calculation.ipynb"
+    source = own if own.exists() else template_folder() / "calculation.ipynb"
+    try:
+        notebook = nbformat.read(source, as_version=4)
+    except (ValueError, nbformat.ValidationError) as error:
+        needs = "must be a notebook of format 4"
+        raise InputRefused([Problem("calculation.ipynb", type(error).__name__, needs)]) from error
+    _write(chosen.out or chosen.folder / "package.pdf", issue(notebook, chosen.folder))
+
+
+def _write(path: Path, content: bytes) -> None:
+    """Write a file whole or not at all: beside it first, then in its place."""
+    try:
+        handle, beside = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
+    except OSError as error:
+        raise OutputFailed(f"{path}: {error.strerror}") from error
+    try:
+        with os.fdopen(handle, "wb") as file:
+            file.write(content)
+            file.flush()
+            os.fsync(file.fileno())
+        os.chmod(beside, 0o644)
+        os.replace(beside, path)
+    except OSError as error:
+        Path(beside).unlink(missing_ok=True)
+        raise OutputFailed(f"{path}: {error.strerror}") from error

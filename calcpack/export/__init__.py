@@ -1,0 +1,1 @@
+"""From sheets to a PDF file, by nbconvert and Typst."""

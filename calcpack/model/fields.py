@@ -1,0 +1,265 @@
+"""What calc.toml may state: one entry a key, for reader, messages, echo, sheets and forms."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping
+from dataclasses import dataclass
+from typing import Any, Literal
+
+
+@dataclass(frozen=True)
+class Field:
+    """One key of calc.toml.
+
+    Attributes:
+        label: what a sheet or a form calls it.
+        kind: a key of ``exact.units.SYSTEMS`` for a number, else "text", "long text", "name",
+            "choice", "date", "flag", "place" (a name, a station or a length) or "table".
+        symbol: the letter in formulas; "" for what is not a number.
+        help: a line for the form.
+        form: one value, a list of them, or either ("several").
+        required: whether its table must state it.
+        default: what holds where it is absent, as it would stand in the file; None if nothing does.
+        choices: what a choice may be, or what may stand in a list in place of a table.
+        later: values, or types of values, that are known but not computed by this release.
+        above: a number must be greater than this.
+        least: a number must be this or greater.
+        most: a number must be this or less.
+        beside: the key of the same table without which it has no meaning.
+        computed: False where any value but the default is not computed by this release.
+    """
+
+    label: str
+    kind: str
+    symbol: str = ""
+    help: str = ""
+    form: Literal["one", "list", "several"] = "one"
+    required: bool = False
+    default: Any = None
+    choices: tuple[str | int, ...] = ()
+    later: tuple[str | type, ...] = ()
+    above: int | None = None
+    least: int | None = None
+    most: int | None = None
+    beside: str = ""
+    computed: bool = True
+
+
+def _tables(label: str, required: bool = False, choices: tuple[str | int, ...] = ()) -> Field:
+    return Field(label, "table", form="list", required=required, choices=choices)
+
+
+def _later(label: str, default: Any = None) -> Field:
+    return Field(label, "table", default=default, computed=False)
+
+
+def _station(label: str, required: bool = True) -> Field:
+    return Field(label, "length", "x", "from the left end of the beam", required=required)
+
+
+_NAME = "unique among supports, releases and sections"
+_SIDES = ("left", "right")
+_DETAILS = ("plan", "table")
+
+FIELDS: Mapping[str, Field] = {
+    "format": Field("Format", "choice", required=True, choices=(1,)),
+    "units": Field("Units", "choice", required=True, choices=("US", "SI")),
+    "cover": Field("Cover", "table"),
+    "cover.title": Field("Title", "text", help="at the head of every sheet", required=True),
+    "cover.number": Field("Calculation number", "text"),
+    "cover.project": Field("Project", "text"),
+    "cover.client": Field("Client", "text"),
+    "cover.prepared": Field("Prepared", "table"),
+    "cover.prepared.by": Field("Prepared by", "text"),
+    "cover.prepared.on": Field("Prepared on", "date"),
+    "cover.checked": Field("Checked", "table"),
+    "cover.checked.by": Field("Checked by", "text", help="not the person who prepared it"),
+    "cover.checked.on": Field("Checked on", "date"),
+    "cover.approved": Field("Approved", "table"),
+    "cover.approved.by": Field("Approved by", "text"),
+    "cover.approved.on": Field("Approved on", "date"),
+    "cover.revisions": _tables("Revisions"),
+    "cover.revisions[].mark": Field("Revision mark", "name", required=True),
+    "cover.revisions[].on": Field("Revision date", "date"),
+    "cover.revisions[].text": Field("Revision text", "long text", required=True),
+    "package": Field("Package", "table"),
+    "package.status": Field(
+        "Status",
+        "choice",
+        help="an open assumption bars Issued",
+        default="For review",
+        choices=("For review", "Issued"),
+    ),
+    "package.paper": Field("Paper", "choice", default="letter", choices=("letter", "A4")),
+    "package.detail": Field(
+        "Detail", "choice", default="every equation", choices=("every equation",), later=_DETAILS
+    ),
+    "assumptions": _tables("Assumptions"),
+    "assumptions[].text": Field("Assumption", "long text", required=True),
+    "assumptions[].basis": Field("Basis of the assumption", "text"),
+    "assumptions[].open": Field(
+        "Assumption open", "flag", help="still to be confirmed", default=False
+    ),
+    "beam": Field("Beam", "table"),
+    "beam.length": Field("Length", "length", "L", "or the spans instead", above=0),
+    "beam.spans": Field(
+        "Span", "length", "l", "between neighbouring supports", form="list", above=0
+    ),
+    "beam.overhang_left": Field(
+        "Left overhang",
+        "length",
+        "a",
+        "left of the first support",
+        default=0,
+        least=0,
+        beside="spans",
+    ),
+    "beam.overhang_right": Field(
+        "Right overhang",
+        "length",
+        "b",
+        "right of the last support",
+        default=0,
+        least=0,
+        beside="spans",
+    ),
+    "beam.supports": _tables("Supports", required=True),
+    "beam.supports[].name": Field("Support", "name", help=_NAME, required=True),
+    "beam.supports[].at": _station("Support station", required=False),
+    "beam.supports[].kind": Field(
+        "Support kind",
+        "choice",
+        help="guided holds rotation and is free to move vertically",
+        required=True,
+        choices=("pin", "roller", "fixed", "guided"),
+        later=("spring",),
+    ),
+    "beam.supports[].face": Field(
+        "Face of the release held", "choice", help="where a release stands there", choices=_SIDES
+    ),
+    "beam.supports[].vertical": _later("Vertical spring"),
+    "beam.supports[].rotational": _later("Rotational spring"),
+    "beam.releases": _tables("Releases"),
+    "beam.releases[].name": Field("Release", "name", help=_NAME, required=True),
+    "beam.releases[].at": _station("Release station"),
+    "beam.releases[].kind": Field(
+        "Release kind",
+        "choice",
+        help="a hinge passes no moment, a slide no shear",
+        required=True,
+        choices=("hinge", "slide"),
+    ),
+    "beam.sections": _tables("Sections", choices=("tenths",)),
+    "beam.sections[].name": Field("Section", "name", help=_NAME, required=True),
+    "beam.sections[].at": _station("Section station"),
+    "beam.stiffness": _later("Stiffness"),
+    "beam.redundants": _later("Redundants"),
+    "beam.transfer": _later("Transfer points"),
+    "effects": _tables("Effects"),
+    "effects[].kind": Field(
+        "Kind of effect",
+        "choice",
+        form="several",
+        required=True,
+        choices=("reaction", "moment reaction", "shear", "moment"),
+        later=("deflection", "rotation"),
+    ),
+    "effects[].at": Field(
+        "Place of the effect",
+        "place",
+        "x",
+        "a name, a station, a length, supports, sections or tenths",
+        form="several",
+        required=True,
+    ),
+    "effects[].side": Field("Side", "choice", help="without it both faces", choices=_SIDES),
+    "effects[].show": Field("Shown", "choice", choices=("every equation",), later=_DETAILS),
+    "trains": _later("Trains"),
+    "moving": _tables("Moving loads"),
+    "moving[].name": Field("Moving load", "name", required=True),
+    "moving[].standard": _later("Standard"),
+    "moving[].table": _later("Table of axles"),
+    "moving[].trains": _later("Trains"),
+    "moving[].axles": _tables("Axles"),
+    "moving[].axles[].weight": Field(
+        "Axle weight", "force", "P", "downward", required=True, above=0
+    ),
+    "moving[].axles[].spacing": Field(
+        "Axle spacing", "length", "d", "to the axle ahead", later=(list, dict), least=0
+    ),
+    "moving[].uniform": Field(
+        "Uniform load", "line load", "w", "on whatever parts raise the effect", default=0, least=0
+    ),
+    "moving[].trailing": _later("Trailing load", default=[]),
+    "moving[].heading": Field(
+        "Heading", "choice", default="both", choices=("right", "left", "both")
+    ),
+    "moving[].relieving": Field(
+        "Relieving axles",
+        "choice",
+        help="axles that lessen the effect",
+        default="count",
+        choices=("count", "neglect"),
+        later=("whole train",),
+    ),
+    "moving[].allowance": Field(
+        "Dynamic allowance",
+        "number",
+        "I",
+        "on axles only",
+        default=0,
+        later=(list,),
+        least=0,
+        most=10,
+    ),
+    "moving[].distribution": Field(
+        "Distribution",
+        "number",
+        "g",
+        "what of the load this beam takes",
+        default=1,
+        later=(list, "from deck"),
+        above=0,
+    ),
+    "moving[].order": _later("Order of trains"),
+    "moving[].spacing": _later("Spacing of trains"),
+    "moving[].absent": _later("Absent trains"),
+    "permanent": _later("Permanent loads"),
+    "stages": _later("Stages"),
+    "given": _later("Given effects"),
+    "combinations": _later("Combinations"),
+    "resistances": _later("Resistances"),
+    "deck": _later("Deck"),
+}
+"""Every known key by its pattern, in the order of the data echo."""
+
+
+def pattern_of(path: str) -> str:
+    """The pattern of a path: its indices left out.
+
+    >>> pattern_of("moving[0].axles[12].weight")
+    'moving[].axles[].weight'
+    """
+    return re.sub(r"\[\d+\]", "[]", path)
+
+
+def field_at(path: str) -> Field | None:
+    """The field that a path belongs to, also of an item in a list; None for an unknown key.
+
+    >>> field_at("beam.spans[1]").label, field_at("beam.colour")
+    ('Span', None)
+    """
+    return FIELDS.get(pattern_of(path).removesuffix("[]"))
+
+
+def _keys() -> dict[str, dict[str, Field]]:
+    keys: dict[str, dict[str, Field]] = {}
+    for pattern, field in FIELDS.items():
+        table, _, key = pattern.rpartition(".")
+        keys.setdefault(table, {})[key] = field
+    return keys
+
+
+KEYS: Mapping[str, Mapping[str, Field]] = _keys()
+"""Per table (its pattern; "" for the file itself) the fields that it may hold, by key."""

@@ -1,0 +1,1 @@
+"""Sheets put into the languages of typesetters and browsers."""

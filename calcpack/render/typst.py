@@ -1,0 +1,161 @@
+"""Sheets as Typst source; numbers are rounded here and user text passes as string literals only."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass, field
+
+from calcpack.derive.steps import Derivation, Step, number_text
+from calcpack.exact.formula import Leaf, Notation, Symbol, Variable, symbols, write
+from calcpack.render.svg import to_svg
+from calcpack.sheets.blocks import (
+    Beside,
+    Block,
+    Digits,
+    Equation,
+    Expression,
+    Figure,
+    Framed,
+    Heading,
+    Inline,
+    Paragraph,
+    Sheet,
+    Table,
+    Text,
+    Value,
+)
+
+IN_MATH = Notation(
+    plus=" + ",
+    minus=" - ",
+    negative="-",
+    times=" thin ",
+    group="({})",
+    quotient="frac({}, {})",
+    groups_quotient=False,
+)
+IN_DIGITS = Notation(" + ", " − ", "−", " × ", "({})", "{} ÷ {}")
+
+
+@dataclass(frozen=True)
+class Source:
+    """Typst source and the files it refers to, by name."""
+
+    text: str
+    files: Mapping[str, bytes]
+
+
+@dataclass
+class _Writer:
+    """Writes blocks of one package; collects the figures as files."""
+
+    derivation: Derivation
+    files: dict[str, bytes] = field(default_factory=dict)
+
+    def block(self, block: Block) -> Iterator[str]:
+        match block:
+            case Heading(level, text, number):
+                mark = f"{literal(number)}, " if number else "none, "
+                yield f"#calc-heading({level}, {mark}[{self.text(text)}])"
+            case Paragraph(text):
+                yield f"#par[{self.text(text)}]"
+            case Equation(step, lead):
+                yield f"#calc-equation({literal(step.id)}, {literal(lead)}, {_statement(step)})"
+            case Figure(drawing):
+                name = f"figure-{len(self.files) + 1}.svg"
+                self.files[name] = to_svg(drawing)
+                caption, alt = literal(drawing.caption), literal(drawing.alt)
+                yield f"#calc-figure({literal(name)}, {caption}, {alt})"
+            case Beside(blocks, figure):
+                left = "\n".join(line for one in blocks for line in self.block(one))
+                right = "\n".join(self.block(figure))
+                yield f"#calc-beside[\n{left}\n][\n{right}\n]"
+            case Framed(title, blocks):
+                inside = "\n".join(line for one in blocks for line in self.block(one))
+                yield f"#calc-framed({literal(title)})[\n{inside}\n]"
+            case Table():
+                yield from self._table(block)
+
+    def _table(self, table: Table) -> Iterator[str]:
+        widths = ", ".join(f"{c.width}fr" if c.width else "auto" for c in table.columns)
+        aligns = ", ".join(column.align for column in table.columns)
+        head = "".join(f"{literal(column.title)}, " for column in table.columns)
+        if not any(column.title for column in table.columns):
+            head = ""
+        yield f"#calc-table(({widths},), ({aligns},), ({head}),"
+        for row in table.rows:
+            yield "  " + ", ".join(f"[{self.text(cell)}]" for cell in row) + ","
+        yield ")"
+
+    def text(self, text: Text) -> str:
+        return "".join(self._inline(part) for part in text)
+
+    def _inline(self, part: Inline) -> str:
+        match part:
+            case str():
+                return f"#{literal(part)};" if part else ""
+            case Symbol():
+                return _equation(_symbol(part), str(part))
+            case Value(value, decimals, unit):
+                digits = number_text(value, decimals).replace("-", "−")
+                return f"#{literal(f'{digits} {unit}'.rstrip())};"
+            case Digits(formula):
+                return f"#{literal(write(formula, IN_DIGITS, self._digits))};"
+            case Expression(formula):
+                return _equation(
+                    write(formula, IN_MATH, _math_leaf), write(formula, _PLAIN, symbols)
+                )
+
+    def _digits(self, leaf: Leaf | Variable) -> str:
+        return self.derivation.digits(leaf)
+
+
+_PLAIN = Notation()
+
+
+def to_typst(parts: Sequence[Sheet | Block], derivation: Derivation) -> Source:
+    """The body of the package; the template gives the functions that it calls."""
+    writer = _Writer(derivation)
+    lines = []
+    for part in parts:
+        if isinstance(part, Sheet):
+            lines.append(f"#calc-sheet({literal(part.title)})")
+        for block in part.blocks if isinstance(part, Sheet) else (part,):
+            lines.extend(writer.block(block))
+    return Source("\n".join(lines), writer.files)
+
+
+def literal(text: str) -> str:
+    """A Typst string literal that shows the text as typed.
+
+    >>> literal('#read("x")')
+    '"#read(\\\\"x\\\\")"'
+    """
+    escaped = re.sub(
+        r'[\\"\x00-\x1f\x7f\u2028\u2029]',
+        lambda match: f"\\{match[0]}" if match[0] in '\\"' else f"\\u{{{ord(match[0]):x}}}",
+        text,
+    )
+    return f'"{escaped}"'
+
+
+def _statement(step: Step) -> str:
+    right = write(step.formula, IN_MATH, _math_leaf)
+    left = f"sum {_symbol(step.left)}" if step.balance else _symbol(step.left)
+    return _equation(f"{left} = {right}" + " = 0" * step.balance, step.symbols)
+
+
+def _equation(math: str, words: str) -> str:
+    return f"#calc-math({literal(words)}, $ {math} $);"
+
+
+def _math_leaf(leaf: Leaf | Variable) -> str:
+    return symbols(leaf) if leaf.symbol is None else _symbol(leaf.symbol)
+
+
+def _symbol(symbol: Symbol) -> str:
+    letter = symbol.letter.removeprefix("Σ")
+    index = ",".join(part for part in (symbol.index, symbol.face) if part)
+    math = f"{letter}_{literal(index)}" if index else letter
+    return f"{math} ({literal(symbol.place)})" if symbol.place else math

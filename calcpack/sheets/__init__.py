@@ -1,0 +1,1 @@
+"""What the sheets show: figures and blocks, still without any typesetter."""

@@ -1,0 +1,107 @@
+"""The closed set of blocks that a sheet is made of; numbers in them are still exact."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from fractions import Fraction
+from typing import Literal
+
+from calcpack.derive.steps import Step
+from calcpack.exact.formula import Formula, Symbol
+from calcpack.sheets.drawing import Drawing
+
+
+@dataclass(frozen=True)
+class Value:
+    """A number and the decimals it is printed with (None: as a fraction)."""
+
+    value: Fraction
+    decimals: int | None
+    unit: str = ""
+
+
+@dataclass(frozen=True)
+class Digits:
+    """A formula with printed digits put in."""
+
+    formula: Formula
+
+
+@dataclass(frozen=True)
+class Expression:
+    """A formula in symbols."""
+
+    formula: Formula
+
+
+Inline = str | Symbol | Value | Digits | Expression
+Text = tuple[Inline, ...]
+"""A run of text; a plain string in it is shown as typed, never read as markup."""
+
+
+@dataclass(frozen=True)
+class Heading:
+    level: int
+    text: Text
+    number: str = ""
+
+
+@dataclass(frozen=True)
+class Paragraph:
+    text: Text
+
+
+@dataclass(frozen=True)
+class Column:
+    """``width`` in parts of what the narrow columns leave; None: as wide as it needs."""
+
+    title: str
+    align: Literal["left", "right"] = "left"
+    width: int | None = None
+
+
+@dataclass(frozen=True)
+class Table:
+    columns: tuple[Column, ...]
+    rows: tuple[tuple[Text, ...], ...]
+
+
+@dataclass(frozen=True)
+class Equation:
+    """A step stated in symbols, with its number; ``lead`` says in words what it is."""
+
+    step: Step
+    lead: str = ""
+
+
+@dataclass(frozen=True)
+class Figure:
+    drawing: Drawing
+
+
+@dataclass(frozen=True)
+class Beside:
+    """Blocks on the left, a figure on the right of them."""
+
+    blocks: tuple[Block, ...]
+    figure: Figure
+
+
+@dataclass(frozen=True)
+class Framed:
+    """The engineer's own words or output, set apart by a frame with a title."""
+
+    title: str
+    blocks: tuple[Block, ...]
+
+
+Block = Heading | Paragraph | Table | Equation | Figure | Beside | Framed
+
+
+@dataclass(frozen=True)
+class Sheet:
+    """One named part of the package; it begins on a new page."""
+
+    name: str
+    title: str
+    blocks: tuple[Block, ...]

@@ -1,0 +1,36 @@
+"""The sheets by name; the names are a notebook's only interface and never change."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+from calcpack.sheets.blocks import Block, Sheet
+from calcpack.sheets.cover import cover_blocks
+from calcpack.sheets.data import data_blocks
+from calcpack.sheets.lines import line_blocks, model_blocks, unknown_blocks
+from calcpack.sheets.methods import method_blocks
+from calcpack.sheets.placements import placement_blocks, summary_blocks
+from calcpack.solution import Solution
+
+_MAKERS: dict[str, tuple[str, Callable[[Solution], tuple[Block, ...]]]] = {
+    "cover": ("Title sheet", lambda solution: cover_blocks(solution.calculation)),
+    "summary": ("Summary of results", summary_blocks),
+    "data": ("Data", lambda solution: data_blocks(solution.calculation)),
+    "model": ("Model", model_blocks),
+    "unknowns": ("Unknowns", unknown_blocks),
+    "lines": ("Influence lines", line_blocks),
+    "placements": ("Placements", placement_blocks),
+    "methods": ("Second methods", method_blocks),
+}
+
+SHEET_NAMES = tuple(_MAKERS)
+
+
+def make_sheet(name: str, solution: Solution) -> Sheet:
+    """The sheet of that name.
+
+    Raises:
+        KeyError: no sheet is called so.
+    """
+    title, blocks = _MAKERS[name]
+    return Sheet(name, title, blocks(solution))

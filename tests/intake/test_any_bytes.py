@@ -1,0 +1,92 @@
+"""Whatever the bytes, a calculation comes out or a refusal of plain lines: never another error."""
+
+from __future__ import annotations
+
+import random
+import re
+
+import rfc8785
+from hypothesis import given, settings
+from hypothesis import strategies as st
+from intake_samples import SHORT, SI, US, changed
+
+from calcpack.errors import InputRefused, Problem
+from calcpack.intake import read
+from calcpack.intake.shown import unprintable
+
+SAMPLES = (US, SI, SHORT)
+
+TOKEN = re.compile(r'"[^"\n]*"|[\w.+-]+|\S')
+
+ODD = re.findall(
+    TOKEN,
+    """
+    0 -0.0 1 -1 5.5 1e400 1e-400 inf nan 0x7f 1_000 0.1 true 2026-04-07 2026-04-07T01:02:03
+    "" "A" "B" "M" "mid" "tenths" "supports" "sections" "3 ft" "1e9 km" "-2 m" "2 ft 3" "1.5"
+    "fixed" "guided" "slide" "hinge" "spring" "both" "left" "reaction" "shear" "moment reaction"
+    at name kind spans length face side axles = , [ ] { } # ' \\ "\\u0000" "\\u202e" "é" x.y
+    """,
+)
+
+
+def check_lines(lines: list[str], problems: tuple[Problem, ...]) -> None:
+    assert len(lines) == len(problems) > 0
+    for line in lines:
+        assert re.match(r"\S.*: .*, \S", line), line
+        assert not any(map(unprintable, line))
+        assert len(line) < 1000
+
+
+def outcome(data: bytes) -> bool:
+    """Whether a calculation came out; what did come out is looked at either way."""
+    try:
+        calculation = read(data)
+    except InputRefused as refused:
+        check_lines(str(refused).split("\n"), refused.problems)
+        return False
+    beam = calculation.beam
+    assert rfc8785.dumps(dict(calculation.plain))
+    assert all(0 <= station.at <= beam.length for station in beam.stations)
+    assert all(beam.station(effect.station) for effect in calculation.effects)
+    assert len(set(calculation.effects)) == len(calculation.effects)
+    assert any(support.holds_vertical for support in beam.supports)
+    assert len({entry.path for entry in calculation.echo}) == len(calculation.echo)
+    return True
+
+
+def test_words_of_a_good_file_exchanged() -> None:
+    accepted = 0
+    for seed in range(1500):
+        chance = random.Random(seed)
+        text = SAMPLES[seed % len(SAMPLES)]
+        tokens = list(TOKEN.finditer(text))
+        values = [match for match in tokens if match[0][0] in '"0123456789']
+        picked = chance.sample(chance.choice((values, values, tokens)), chance.choice((1, 1, 2, 5)))
+        for match in sorted(picked, key=lambda match: -match.start()):
+            new = chance.choice((chance.choice(ODD), chance.choice(values)[0], ""))
+            text = text[: match.start()] + new + text[match.end() :]
+        accepted += outcome(text.encode())
+    assert 50 < accepted < 1000  # both outcomes were met often
+
+
+def test_bytes_of_a_good_file_exchanged() -> None:
+    for seed in range(500):
+        chance = random.Random(seed)
+        data = bytearray(SAMPLES[seed % len(SAMPLES)].encode())
+        for _ in range(chance.choice((1, 2, 8))):
+            place = chance.randrange(len(data))
+            data[place : place + chance.randrange(3)] = chance.randbytes(chance.randrange(3))
+        outcome(bytes(data))
+
+
+@settings(max_examples=100, deadline=None)
+@given(st.binary(max_size=200) | st.text(max_size=200).map(lambda text: text.encode("utf-8")))
+def test_any_bytes(data: bytes) -> None:
+    assert not outcome(data)
+
+
+@settings(max_examples=100, deadline=None)
+@given(st.text(max_size=80), st.sampled_from(["Girder G7", "mid", "12 ft 6 in", "Haul", "letter"]))
+def test_any_text_in_a_string(inserted: str, place: str) -> None:
+    escaped = "".join(f"\\U{ord(character):08x}" for character in inserted)
+    outcome(changed(US, (place, place + escaped)).encode())

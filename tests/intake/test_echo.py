@@ -1,0 +1,99 @@
+"""The data echo: a row for every value of the file and every default, each once."""
+
+from __future__ import annotations
+
+import tomllib
+from collections.abc import Iterator
+from typing import Any
+
+from intake_samples import SHORT, SI, US, changed
+
+from calcpack.intake import read
+from calcpack.model.fields import FIELDS, pattern_of
+from calcpack.model.request import Entry
+
+
+def leaves(value: Any, path: str = "") -> Iterator[str]:
+    if isinstance(value, dict):
+        for key, item in value.items():
+            yield from leaves(item, f"{path}.{key}" if path else key)
+    elif isinstance(value, list):
+        for index, item in enumerate(value):
+            yield from leaves(item, f"{path}[{index}]")
+    else:
+        yield path
+
+
+def rows(text: str) -> dict[str, Entry]:
+    return {entry.path: entry for entry in read(text.encode()).echo}
+
+
+def test_every_value_typed_has_one_row() -> None:
+    for text in (US, SI, SHORT):
+        echo = read(text.encode()).echo
+        entered = [entry.path for entry in echo if entry.entered]
+        typed = {path for path in leaves(tomllib.loads(text)) if not path.startswith("effects")}
+        effects = len(tomllib.loads(text).get("effects", []))
+        assert len(entered) == len(set(entered)) == len(typed) + effects
+        assert set(entered) == typed | {f"effects[{index}]" for index in range(effects)}
+
+
+def test_rows_follow_the_field_table() -> None:
+    order = list(FIELDS)
+    for text in (US, SI):
+        heads = [entry.path.partition(".")[0].partition("[")[0] for entry in rows(text).values()]
+        places = [order.index(head) for head in heads]
+        assert places == sorted(places)
+        assert len(set(heads)) > 5
+
+
+def test_values_are_shown_as_typed_with_what_a_quantity_comes_to() -> None:
+    echo = rows(US)
+    assert echo["beam.length"] == Entry("beam.length", "Length", "100.0", "ft", True)
+    assert echo["beam.sections[0].at"].said == "12 ft 6 in = 12.5"
+    assert echo["moving[0].axles[1].weight"].said == "38 kip = 38"
+    assert echo["moving[0].uniform"].unit == "kip/ft"
+    assert echo["beam.releases[1].at"].said == "6_2.0"
+    assert echo["assumptions[0].open"].said == "false"
+    assert echo["cover.prepared.on"].said == "2026-04-07"
+    assert echo["cover.checked.by"].said == ""
+    metres = changed(US, ('"12 ft 6 in"', '"3 m"'))
+    assert rows(metres)["beam.sections[0].at"].said == "3 m = 1250/127 ≈ 9.8425"
+
+
+def test_an_effect_is_one_row() -> None:
+    assert [entry.said for path, entry in rows(US).items() if path.startswith("effects")] == [
+        "moment, shear at mid, B, 20 ft, 10 m = 12500/381 ≈ 32.8084 ft; every equation",
+        "reaction at supports",
+    ]
+    left = changed(US, ('at = "supports"', 'at = "C"\nside = "left"'))
+    assert rows(left)["effects[1]"].said == "reaction at C, left face"
+
+
+def test_defaults_are_told_from_what_was_entered() -> None:
+    defaults = {path: entry.said for path, entry in rows(SI).items() if not entry.entered}
+    assert defaults == {
+        "package.status": "For review",
+        "package.detail": "every equation",
+        "beam.overhang_right": "0",
+        "effects": "every reaction and moment reaction; moment and shear at each section",
+        "moving[0].heading": "both",
+        "moving[0].relieving": "count",
+        "moving[0].allowance": "0",
+        "moving[0].distribution": "1",
+        "moving[1].uniform": "0",
+        "moving[1].heading": "both",
+        "moving[1].relieving": "count",
+        "moving[1].allowance": "0",
+        "moving[1].distribution": "1",
+    }
+    assert not [entry for entry in read(US.encode()).echo if not entry.entered]
+
+
+def test_labels_and_units_are_those_of_the_fields() -> None:
+    for path, entry in rows(US).items():
+        if not path.startswith("effects"):
+            assert entry.label == FIELDS[pattern_of(path).removesuffix("[]")].label
+    units = {entry.unit for entry in rows(US).values()}
+    assert units == {"", "ft", "kip", "kip/ft"}
+    assert {entry.unit for entry in rows(SI).values()} == {"", "m", "kN", "kN/m"}
