@@ -81,10 +81,16 @@ def solve(calculation: Calculation) -> Solution:
     book = Book(calculation)
     for step in plan:
         line_group(book, step.unknown, step, unknowns[step.unknown])
+    areas = {}
     for line in lines:
         if line.cut is not None:
             line_group(book, line.effect, line.cut, line.line)
-    _derive_placements(book, lines, placements)
+        areas[line.effect] = area_group(book, line.effect, line.line)
+    trains = {load.path: train_group(book, load) for load in calculation.moving}
+    for found in placements:
+        for extreme in (found.greatest, found.least):
+            train = trains[found.load.path]
+            placement_group(book, train, areas[found.effect], every_line[found.effect], extreme)
     return Solution(
         calculation, system, classification, plan, lines, placements, second, book.close()
     )
@@ -97,16 +103,3 @@ def _placement(load: MovingLoad, line: Line, second: SecondMethods) -> Placement
         swept_value(second, line.effect, load, least),
     )
     return Placement(load, line.effect, greatest, least, swept)
-
-
-def _derive_placements(
-    book: Book, lines: tuple[Line, ...], placements: tuple[Placement, ...]
-) -> None:
-    areas = {line.effect: area_group(book, line.effect, line.line) for line in lines}
-    trains = {load.path: train_group(book, load) for load in book.calculation.moving}
-    line_of = {line.effect: line.line for line in lines}
-    for found in placements:
-        for extreme in (found.greatest, found.least):
-            effect = found.effect
-            train = trains[found.load.path]
-            placement_group(book, train, areas[effect], line_of[effect], extreme)

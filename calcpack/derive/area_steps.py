@@ -10,7 +10,7 @@ from calcpack.derive.steps import AreaGroup, QuantityKind, Step
 from calcpack.exact.formula import Formula, Leaf, Symbol, constant, total
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.request import Effect
-from calcpack.statics.system import symbol_of
+from calcpack.statics.system import key_of
 
 AREA_KIND: dict[QuantityKind, QuantityKind] = {"number": "length", "length": "area"}
 """What the area under a line of that kind is."""
@@ -19,7 +19,7 @@ AREA_KIND: dict[QuantityKind, QuantityKind] = {"number": "length", "length": "ar
 def area_group(book: Book, effect: Effect, line: Piecewise) -> AreaGroup:
     """Write every zero, every stretch's area (trapezium or triangle) and the two sums."""
     number = book.open_group()
-    root = f"area/{symbol_of(effect)}"
+    root = f"area/{key_of(effect)}"
     kind = AREA_KIND[LINE_KIND[effect.kind]]
     zeros = _zeros(book, root, effect, line)
     parts: list[Step] = list(zeros.values())
@@ -38,7 +38,7 @@ def area_group(book: Book, effect: Effect, line: Piecewise) -> AreaGroup:
         effect,
         tuple(parts),
         book.find(f"{root}/positive", Symbol("A", "+"), total(signed[1]), kind, positive),
-        book.find(f"{root}/negative", Symbol("A", "-"), total(signed[-1]), kind, negative),
+        book.find(f"{root}/negative", Symbol("A", "−"), total(signed[-1]), kind, negative),
     )
     book.close_group(group)
     return group

@@ -115,10 +115,10 @@ class Book:
         return leaf if symbol is None else Leaf(leaf.value, symbol, leaf.origin)
 
     def ordinate(self, effect: Effect, at: Fraction, side: Side) -> Leaf:
-        """The ordinate of a line at a key station, one side of it, as a leaf y."""
+        """The ordinate of a line at a key station, one side of it, as a leaf eta."""
         place = self.place(at).symbol
         assert place is not None
-        symbol = Symbol("y", place.index or place.letter)
+        symbol = Symbol("η", place.index or place.letter)
         return self.cite(self.ordinates[effect, at, side], symbol)
 
     def _next_id(self) -> str:

@@ -14,7 +14,7 @@ from calcpack.model.request import Effect
 from calcpack.statics.equation import Equation, Term
 from calcpack.statics.influence import Cut
 from calcpack.statics.plan import PlanStep
-from calcpack.statics.system import place_name, symbol_of
+from calcpack.statics.system import key_of, place_name, symbol_of
 
 LINE_KIND: dict[str, QuantityKind] = {
     "reaction": "number",
@@ -29,7 +29,7 @@ def line_group(book: Book, quantity: Effect, source: PlanStep | Cut, line: Piece
     """Write one influence line; ``line`` is the engine's, which every row must meet exactly."""
     number = book.open_group()
     equation, kind = source.equation, LINE_KIND[quantity.kind]
-    root = f"{'unknown' if isinstance(source, PlanStep) else 'effect'}/{symbol_of(quantity)}"
+    root = f"{'unknown' if isinstance(source, PlanStep) else 'effect'}/{key_of(quantity)}"
     balance = _balance(book, root, equation)
     forms = _forms(book, root, quantity, equation, kind)
     rows = tuple(_rows(book, root, quantity, equation, line, kind))
@@ -108,7 +108,7 @@ def _sides(
     if at == book.beam.length:
         return [("left", ("left", "right"))]
     jumps = line.left(at) != line.right(at) or any(
-        book.ordinates[other, at, "left"] is not book.ordinates[other, at, "right"]
+        book.ordinates[other, at, "left"].value != book.ordinates[other, at, "right"].value
         for other in others
     )
     if jumps:

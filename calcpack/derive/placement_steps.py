@@ -18,7 +18,7 @@ from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
 from calcpack.moving.critical import Candidate, Governing
 from calcpack.moving.placement import AxleShare
-from calcpack.statics.system import symbol_of
+from calcpack.statics.system import key_of
 
 EFFECT_KIND: dict[str, QuantityKind] = {
     "reaction": "force",
@@ -57,7 +57,7 @@ def placement_group(
     load, effect = train.load, areas.effect
     kind = EFFECT_KIND[effect.kind]
     extreme = "max" if governing.sense > 0 else "min"
-    root = f"placement/{load.path}/{symbol_of(effect)}/{extreme}"
+    root = f"placement/{load.path}/{key_of(effect)}/{extreme}"
     steps: list[Step] = []
     axles: Formula = ZERO
     if governing.chosen is not None:

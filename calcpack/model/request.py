@@ -40,11 +40,6 @@ class Effect:
     def label(self) -> str:
         return f"{self.kind} at {self.at}" + (f", {self.face} face" if self.face else "")
 
-    @property
-    def key(self) -> str:
-        """A stable name for step keys, such as ``shear/B/left``."""
-        return "/".join(part for part in (self.kind, self.at, self.face or "") if part)
-
 
 @dataclass(frozen=True)
 class Signature:

@@ -7,7 +7,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 
 from calcpack.derive.steps import Derivation, Step, number_text
-from calcpack.exact.formula import Leaf, Notation, Symbol, Variable, symbols, write
+from calcpack.exact.formula import PLAIN, Leaf, Notation, Symbol, Variable, symbols, write
 from calcpack.render.svg import to_svg
 from calcpack.sheets.blocks import (
     Beside,
@@ -35,6 +35,7 @@ IN_MATH = Notation(
     quotient="frac({}, {})",
     groups_quotient=False,
 )
+IN_LINE = Notation(times=" thin ", quotient="{} \\/ {}")
 IN_DIGITS = Notation(" + ", " − ", "−", " × ", "({})", "{} ÷ {}")
 
 
@@ -58,10 +59,10 @@ class _Writer:
             case Heading(level, text, number):
                 mark = f"{literal(number)}, " if number else "none, "
                 yield f"#calc-heading({level}, {mark}[{self.text(text)}])"
-            case Paragraph(text):
-                yield f"#par[{self.text(text)}]"
+            case Paragraph(text, leads):
+                yield f"#calc-paragraph({str(leads).lower()})[{self.text(text)}]"
             case Equation(step, lead):
-                yield f"#calc-equation({literal(step.id)}, {literal(lead)}, {_statement(step)})"
+                yield f"#calc-equation({literal(step.id)}, {literal(lead)})[{_statement(step)}]"
             case Figure(drawing):
                 name = f"figure-{len(self.files) + 1}.svg"
                 self.files[name] = to_svg(drawing)
@@ -104,14 +105,11 @@ class _Writer:
                 return f"#{literal(write(formula, IN_DIGITS, self._digits))};"
             case Expression(formula):
                 return _equation(
-                    write(formula, IN_MATH, _math_leaf), write(formula, _PLAIN, symbols)
+                    write(formula, IN_LINE, _math_leaf), write(formula, PLAIN, symbols)
                 )
 
     def _digits(self, leaf: Leaf | Variable) -> str:
-        return self.derivation.digits(leaf)
-
-
-_PLAIN = Notation()
+        return self.derivation.digits(leaf).replace("-", "−")
 
 
 def to_typst(parts: Sequence[Sheet | Block], derivation: Derivation) -> Source:

@@ -48,7 +48,10 @@ class Heading:
 
 @dataclass(frozen=True)
 class Paragraph:
+    """``leads`` where it belongs to what follows and must not be parted from it by a page's end."""
+
     text: Text
+    leads: bool = False
 
 
 @dataclass(frozen=True)

@@ -122,7 +122,7 @@ def runs_of(symbol: Symbol) -> tuple[Run, ...]:
 def wrapped(text: Text, width: float) -> Text:
     """The text in lines of at most ``width`` mm, broken at spaces, else within a word.
 
-    >>> str(wrapped(plain("West abutment"), 12)), len(wrapped(plain("West abutment"), 12).lines)
+    >>> str(wrapped(plain("West abutment"), 16)), len(wrapped(plain("West abutment"), 16).lines)
     ('West abutment', 2)
     """
     if text.width <= width:

@@ -164,7 +164,7 @@ def _derived(solution: Solution, group: LineGroup, reason: str) -> Iterator[Bloc
         *(Equation(step, step.condition) for step in group.forms),
     )
     yield Heading(2, (effect_title(group.quantity), ": ", symbol_of(group.quantity)), _no(group))
-    yield Paragraph((reason,))
+    yield Paragraph((reason,), leads=True)
     yield Beside(equations, Figure(free_body_figure(body, unit, BODY_WIDTH)))
     yield _rows(solution, group)
 
@@ -201,7 +201,7 @@ def _rows(solution: Solution, group: LineGroup) -> Table:
                 (Value(Fraction(float(other)), result.decimals or 4),),
             )
         )
-    unit = units[group.balance.kind]
+    unit = units[group.rows[0].step.kind]
     if unit:
         columns = (*columns[:4], Column(f"result, {unit}", "right"), columns[5])
     return Table(columns, tuple(rows))
@@ -217,7 +217,7 @@ def _drawn(
     solution: Solution, effect: Effect, group: LineGroup, areas: AreaGroup
 ) -> Iterator[Block]:
     calculation = solution.calculation
-    unit = SYSTEMS[calculation.units][group.balance.kind]
+    unit = SYSTEMS[calculation.units][group.rows[0].step.kind]
     line = next(found.line for found in solution.lines if found.effect == effect)
     decimals = max(solution.derivation.decimals[f"step:{row.step.key}"] or 4 for row in group.rows)
     yield Heading(2, ("Line and areas: ", effect_title(effect)), _no(areas))

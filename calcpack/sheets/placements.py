@@ -25,11 +25,12 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
     length = units["length"]
     columns = (
         Column("effect", width=4),
-        Column("load", width=3),
-        Column("", width=2),
+        Column("load", width=2),
+        Column(""),
         Column("value", "right"),
         Column("unit"),
-        Column(f"lead axle at, {length}", "right", width=2),
+        Column(f"lead axle at, {length}", "right"),
+        Column("heading"),
         Column("next", "right"),
         Column("step", "right"),
     )
@@ -46,7 +47,7 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
                     (EXTREMES[found.sense],),
                     (result,),
                     (units[step.kind],),
-                    _lead(found),
+                    *_lead(found),
                     (Value(nearest, result.decimals),) if nearest is not None else ("",),
                     (step.id,),
                 )
@@ -78,11 +79,11 @@ def placement_blocks(solution: Solution) -> tuple[Block, ...]:
     return tuple(blocks)
 
 
-def _lead(found: Governing) -> Text:
+def _lead(found: Governing) -> tuple[Text, Text]:
     if found.chosen is None:
-        return ("uniform load only",) if found.uniform else ("stays away",)
+        return ("uniform only" if found.uniform else "stays away",), ("",)
     position = found.chosen.position
-    return (Value(position.lead_at, DECIMALS["length"]), f", heading {position.heading}")
+    return (Value(position.lead_at, DECIMALS["length"]),), (position.heading,)
 
 
 def _train(solution: Solution, group: TrainGroup) -> Iterator[Block]:

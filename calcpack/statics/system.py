@@ -24,6 +24,18 @@ def symbol_of(effect: Effect) -> Symbol:
     return Symbol(LETTERS[effect.kind], effect.at, effect.face or "")
 
 
+def key_of(effect: Effect) -> str:
+    """A name for step keys, unambiguous for any name of a place (escaped after RFC 6901).
+
+    >>> key_of(Effect("shear", "B", Fraction(40), "left"))
+    'V_B/left'
+    >>> key_of(Effect("moment", "1/2", Fraction(20)))
+    'M_1~12'
+    """
+    at = effect.at.replace("~", "~0").replace("/", "~1")
+    return f"{LETTERS[effect.kind]}_{at}" + (f"/{effect.face}" if effect.face else "")
+
+
 @dataclass(frozen=True)
 class Action:
     """An unknown as it acts on one body.
