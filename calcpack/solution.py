@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 from calcpack.derive.area_steps import area_group
@@ -49,6 +50,7 @@ class Solution:
     system: System
     classification: Classification
     plan: tuple[PlanStep, ...]
+    unknowns: Mapping[Effect, Piecewise]
     lines: tuple[Line, ...]
     placements: tuple[Placement, ...]
     second: SecondMethods
@@ -92,7 +94,15 @@ def solve(calculation: Calculation) -> Solution:
             train = trains[found.load.path]
             placement_group(book, train, areas[found.effect], every_line[found.effect], extreme)
     return Solution(
-        calculation, system, classification, plan, lines, placements, second, book.close()
+        calculation,
+        system,
+        classification,
+        plan,
+        unknowns,
+        lines,
+        placements,
+        second,
+        book.close(),
     )
 
 

@@ -29,7 +29,7 @@ def area_group(book: Book, effect: Effect, line: Piecewise) -> AreaGroup:
             index = len(parts) - len(zeros) + 1
             formula = _stretch(book, effect, zeros, start, end)
             symbol, area = Symbol("A", str(index)), line.integral(start, end)
-            step = book.find(f"{root}/from={start}", symbol, formula, kind, area)
+            step = book.find(f"{root}/from={start}", symbol, formula, kind, area, root)
             signed[sign].append((1, book.cite(step)))
             parts.append(step)
     positive, negative = line.areas()
@@ -37,8 +37,8 @@ def area_group(book: Book, effect: Effect, line: Piecewise) -> AreaGroup:
         number,
         effect,
         tuple(parts),
-        book.find(f"{root}/positive", Symbol("A", "+"), total(signed[1]), kind, positive),
-        book.find(f"{root}/negative", Symbol("A", "−"), total(signed[-1]), kind, negative),
+        book.find(f"{root}/positive", Symbol("A", "+"), total(signed[1]), kind, positive, root),
+        book.find(f"{root}/negative", Symbol("A", "−"), total(signed[-1]), kind, negative, root),
     )
     book.close_group(group)
     return group
@@ -54,7 +54,9 @@ def _zeros(book: Book, root: str, effect: Effect, line: Piecewise) -> dict[Fract
         run = book.place(high) - book.place(low)
         formula = book.place(low) + run * y_low / (y_low - y_high)
         symbol = Symbol("x", f"zero {len(steps) + 1}")
-        steps[zero] = book.find(f"{root}/zero={zero}", symbol, formula, "length", zero)
+        steps[zero] = book.find(
+            f"{root}/zero={zero}", symbol, formula, "length", zero, f"{root}/zeros"
+        )
     return steps
 
 

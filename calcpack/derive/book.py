@@ -12,6 +12,7 @@ from calcpack.exact.numbers import decimals_to_end
 from calcpack.exact.piecewise import Side
 from calcpack.model.beam import Beyond, Datum, Source, Station, Tenth, Typed
 from calcpack.model.request import Calculation, Effect
+from calcpack.statics.system import place_name
 
 DECIMALS: dict[QuantityKind, int] = {
     "number": 4,
@@ -69,7 +70,8 @@ class Book:
         left: Symbol,
         formula: Formula,
         kind: QuantityKind,
-        expected: Fraction | None = None,
+        expected: Fraction,
+        column: str = "",
     ) -> Step:
         """Write a step with numbers; its formula must give what the engine found, exactly.
 
@@ -77,9 +79,9 @@ class Book:
             ProgramFault: the formula gives another value than ``expected``.
         """
         value = evaluate(formula)
-        if expected is not None and value != expected:
+        if value != expected:
             raise ProgramFault(f"step {key} gives {value}, the engine found {expected}")
-        step = Step(key, self._next_id(), left, formula, value, kind)
+        step = Step(key, self._next_id(), left, formula, value, kind, column or key)
         self._start[STEP + key] = DECIMALS[kind]
         self._steps.append(step)
         return step
@@ -95,7 +97,7 @@ class Book:
         condition: str = "",
     ) -> Step:
         """Write a step in symbols only."""
-        return Step(key, self._next_id(), left, formula, None, kind, balance, condition)
+        return Step(key, self._next_id(), left, formula, None, kind, "", balance, condition)
 
     def given(self, path: str, symbol: Symbol, kind: QuantityKind) -> Leaf:
         """An input of the calculation as a leaf."""
@@ -121,6 +123,10 @@ class Book:
         symbol = Symbol("η", place.index or place.letter)
         return self.cite(self.ordinates[effect, at, side], symbol)
 
+    def tag_at(self, at: Fraction) -> str:
+        """What stands in symbols for a key station."""
+        return self.beam.tags.get(self.beam.station(at).name) or place_name(self.beam, at)
+
     def _next_id(self) -> str:
         self._in_group += 1
         return f"{self._number}.{self._in_group}"
@@ -132,9 +138,9 @@ class Book:
         for station in self.beam.stations:
             source = station.source
             if isinstance(source, Datum):
-                self._stations[station.at] = Leaf(Fraction(0), Symbol("x", "0"))
+                self._stations[station.at] = Leaf(Fraction(0), Symbol("x", self._tag(station, "0")))
             elif isinstance(source, Typed):
-                symbol = Symbol("x", station.name or str(station.at))
+                symbol = Symbol("x", self._tag(station, str(station.at)))
                 if source.path == "beam.length":
                     symbol = Symbol("L")
                 self._stations[station.at] = self.given(source.path, symbol, "length")
@@ -144,8 +150,10 @@ class Book:
         if steps:
             self.close_group(StationGroup(number, tuple(steps)))
 
+    def _tag(self, station: Station, nameless: str) -> str:
+        return self.beam.tags[station.name] if station.name else nameless
+
     def _station_step(self, station: Station, source: Source) -> Step:
-        name = station.name or "end"
         if isinstance(source, Beyond):
             index = source.path.rstrip("]").split("[")[-1]
             length = (
@@ -159,8 +167,10 @@ class Book:
             start = self.place(self.beam.station(source.start).at)
             end = self.place(self.beam.station(source.end).at)
             formula = start + constant(source.tenths) * (end - start) / constant(10)
-        symbol = Symbol("x", name)
-        step = self.find(f"station/{name}", symbol, formula, "length", station.at)
+        symbol = Symbol("x", self._tag(station, "end"))
+        step = self.find(
+            f"station/{station.name or 'end'}", symbol, formula, "length", station.at, "station"
+        )
         self._stations[station.at] = self.cite(step)
         return step
 

@@ -18,9 +18,9 @@ def closing_decimals(
     The steps are walked from last to first. While the printed operands of a step miss its printed
     result by more than one unit of the result's last digit, the operand that can be wrong most
     (its partial derivative times one unit of its own last digit) gets one more decimal, everywhere
-    it is printed; beyond 15 significant digits it is printed as a fraction. An operand's new
-    decimals may disturb a later step that held by luck, so the walk is repeated until nothing
-    changes; decimals only grow, so it ends.
+    it is printed and with it all results of its column; beyond 15 significant digits it is printed
+    as a fraction. New decimals may disturb a later step that held by luck, so the walk is repeated
+    until nothing changes; decimals only grow, so it ends.
 
     Args:
         steps: in the order of the package.
@@ -30,13 +30,24 @@ def closing_decimals(
         Decimals by origin; None means: printed as a fraction.
     """
     decimals = dict(start)
+    members: dict[str, list[str]] = {}
+    for step in steps:
+        members.setdefault(step.column, []).append(STEP + step.key)
+    columns = {STEP + step.key: members[step.column] for step in steps}
     changed = True
     while changed:
         changed = False
         for step in reversed(steps):
             while step.value is not None and not closes(step, decimals):
                 refined = _weakest(step, decimals)
-                decimals[refined] = _one_more(_value(step, refined), decimals[refined])
+                more = _one_more(_value(step, refined), decimals[refined])
+                decimals[refined] = more
+                if more is not None:
+                    decimals.update(
+                        (other, more)
+                        for other in columns.get(refined, ())
+                        if (places := decimals[other]) is not None and places < more
+                    )
                 changed = True
     return decimals
 

@@ -43,7 +43,7 @@ def _balance(book: Book, root: str, equation: Equation) -> Step:
         left, kind = Symbol("ΣV"), LINE_KIND["shear"]
         load: tuple[int, Formula] = (-1, unit_load())
     else:
-        left, kind = Symbol("ΣM", place_name(book.beam, equation.about)), LINE_KIND["moment"]
+        left, kind = Symbol("ΣM", book.tag_at(equation.about)), LINE_KIND["moment"]
         load = (1, unit_load() * (variable_place() - book.place(equation.about)))
     terms = [(term.sign, _with_arm(book, term, _symbol_only)) for term in equation.terms]
     if equation.start < equation.end:
@@ -88,7 +88,7 @@ def _rows(
             load = book.place(station.at, LOAD_PLACE) if loaded else None
             formula = _solved(book, equation, quantity, leaf, load)
             key = f"{root}/at={station.at}" + (f"/{side}" if len(stands_for) == 1 else "")
-            step = book.find(key, left, formula, kind, line.value(station.at, side))
+            step = book.find(key, left, formula, kind, line.value(station.at, side), root)
             for one in stands_for:
                 book.ordinates[quantity, station.at, one] = step
             place = station.name or place_name(book.beam, station.at)

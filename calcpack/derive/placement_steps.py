@@ -39,7 +39,7 @@ def train_group(book: Book, load: MovingLoad) -> TrainGroup:
             spacing = book.given(path, Symbol("a", str(index + 1)), "length")
             formula = spacing if index == 1 else book.cite(steps[-1]) + spacing
         key, symbol = f"train/{load.path}/offset={index + 1}", Symbol("d", str(index + 1))
-        steps.append(book.find(key, symbol, formula, "length", offset))
+        steps.append(book.find(key, symbol, formula, "length", offset, f"train/{load.path}"))
     group = TrainGroup(number, load, tuple(steps))
     book.close_group(group)
     return group
@@ -98,13 +98,18 @@ def _places(
     if chosen.axle:
         offset = book.cite(train.steps[chosen.axle])
         lead = stands + offset if sign > 0 else stands - offset
-    first = book.find(f"{root}/axle=1", Symbol("z", "1"), lead, "length", chosen.position.lead_at)
+    column = f"{root}/places"
+    first = book.find(
+        f"{root}/axle=1", Symbol("z", "1"), lead, "length", chosen.position.lead_at, column
+    )
     steps = [first]
     for index, share in enumerate(shares[1:], start=1):
         offset = book.cite(train.steps[index])
         formula = book.cite(first) - offset if sign > 0 else book.cite(first) + offset
         symbol = Symbol("z", str(index + 1))
-        steps.append(book.find(f"{root}/axle={index + 1}", symbol, formula, "length", share.at))
+        steps.append(
+            book.find(f"{root}/axle={index + 1}", symbol, formula, "length", share.at, column)
+        )
     return steps
 
 
@@ -134,7 +139,8 @@ def _ordinate(
             run = book.place(high) - book.place(low)
             formula = y_low + (y_high - y_low) * (book.cite(at) - book.place(low)) / run
     key, symbol = f"{root}/ordinate={index + 1}", Symbol("y", str(index + 1))
-    return book.find(key, symbol, formula, _line_kind(effect), share.ordinate)
+    column = f"{root}/ordinates"
+    return book.find(key, symbol, formula, _line_kind(effect), share.ordinate, column)
 
 
 def _line_kind(effect: Effect) -> QuantityKind:

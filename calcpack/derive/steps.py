@@ -33,6 +33,7 @@ class Step:
         formula: what stands right of it.
         value: the exact result; None for a statement in symbols only.
         kind: what the result is, hence its unit.
+        column: results of one column are printed with the same decimals; by default its own.
         balance: True for an equation of equilibrium, which ends in "= 0".
         condition: for which place of the load it holds, in words.
     """
@@ -43,6 +44,7 @@ class Step:
     formula: Formula
     value: Fraction | None
     kind: QuantityKind
+    column: str = ""
     balance: bool = False
     condition: str = ""
 

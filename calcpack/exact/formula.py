@@ -227,7 +227,7 @@ def write(formula: Formula, notation: Notation, leaf: Callable[[Leaf | Variable]
     match formula:
         case Leaf() | Variable():
             text = leaf(formula)
-            return notation.group.format(text) if text.startswith("-") else text
+            return notation.group.format(text) if text.startswith(("-", "−")) else text
         case Sum(terms):
             text = ""
             for position, (sign, term) in enumerate(terms):

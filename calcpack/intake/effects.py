@@ -169,7 +169,9 @@ class _Wanted:
             and (self._holds(kind, at) or not self.outline.whole)
         ):
             faces = (side,) if side else ("left", "right")
-        return [Effect(kind, self._called(at), at, face) for face in faces]
+        name = self._called(at)
+        tag = self.beam.tags.get(name, "")
+        return [Effect(kind, name, at, face, tag) for face in faces]
 
     def _called(self, at: Fraction) -> str:
         """The name of the station, or its decimal; with its unit if another place is named so."""

@@ -2,11 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+import itertools
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 from typing import Literal
+
+TAG_LENGTH = 12
+"""The longest name that stands in symbols as it is."""
 
 SupportKind = Literal["pin", "roller", "fixed", "guided"]
 ReleaseKind = Literal["hinge", "slide"]
@@ -143,6 +147,25 @@ class Beam:
             yield section.at, section.name, section.source, None, None
         yield Fraction(0), "", Datum(), None, None
         yield self.length, "", self.end, None, None
+
+    @cached_property
+    def tags(self) -> Mapping[str, str]:
+        """What stands for each name in symbols: the name, or S1, H2, X3 for one that is too long.
+
+        S is for supports, H for releases, X for sections; a tag is never another place's name.
+        """
+        names = {name for _, name, *_ in self._places()}
+        tags: dict[str, str] = {}
+        kinds: dict[str, tuple[Support | Release | Section, ...]] = {
+            "S": self.supports,
+            "H": self.releases,
+            "X": self.sections,
+        }
+        for letter, parts in kinds.items():
+            free = (tag for n in itertools.count(1) if (tag := f"{letter}{n}") not in names)
+            for part in parts:
+                tags[part.name] = part.name if len(part.name) <= TAG_LENGTH else next(free)
+        return tags
 
     @cached_property
     def _by_name(self) -> dict[str, Fraction]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from datetime import date
 from fractions import Fraction
 from typing import Any, Literal
@@ -26,6 +26,7 @@ class Effect:
         at: name of the place, or its station as text where it has none.
         station: where it is.
         face: the side of the place at which the beam is cut, where two values exist; else None.
+        tag: what stands in symbols for a long name; "" where the name itself does.
 
     >>> Effect("shear", "B", Fraction(40), "left").label
     'shear at B, left face'
@@ -35,6 +36,12 @@ class Effect:
     at: str
     station: Fraction
     face: Face | None = None
+    tag: str = field(default="", compare=False)
+
+    @property
+    def index(self) -> str:
+        """What stands for the place in symbols."""
+        return self.tag or self.at
 
     @property
     def label(self) -> str:
@@ -64,6 +71,11 @@ class Cover:
     checked: Signature = Signature()
     approved: Signature = Signature()
     revisions: tuple[Revision, ...] = ()
+
+    @property
+    def revision(self) -> str:
+        """The mark of the last revision; "" where there is none."""
+        return self.revisions[-1].mark if self.revisions else ""
 
     @property
     def latest(self) -> date | None:
@@ -102,7 +114,8 @@ class Calculation:
     """One calc.toml, read and checked.
 
     ``plain`` is the file as plain JSON data without ``cover`` (for the digest); ``inputs`` gives
-    the exact value of every number a formula may cite, by its path; ``echo`` lists every value.
+    the exact value of every number a formula may cite, by its path; ``echo`` lists every value;
+    ``text`` is the file as typed.
     """
 
     units: str
@@ -115,3 +128,4 @@ class Calculation:
     plain: Mapping[str, Any]
     inputs: Mapping[str, Fraction]
     echo: tuple[Entry, ...]
+    text: str = ""

@@ -12,6 +12,7 @@ from calcpack.render.svg import to_svg
 from calcpack.sheets.blocks import (
     Beside,
     Block,
+    Contents,
     Digits,
     Equation,
     Expression,
@@ -20,11 +21,18 @@ from calcpack.sheets.blocks import (
     Heading,
     Inline,
     Paragraph,
+    Preformatted,
+    Reference,
     Sheet,
+    Signatures,
     Table,
     Text,
     Value,
 )
+
+LONGEST_WORD = 16
+"""A longer word may be broken, after so many characters a piece."""
+_PIECES = re.compile("." * 10 + "|.+")
 
 IN_MATH = Notation(
     plus=" + ",
@@ -56,9 +64,8 @@ class _Writer:
 
     def block(self, block: Block) -> Iterator[str]:
         match block:
-            case Heading(level, text, number):
-                mark = f"{literal(number)}, " if number else "none, "
-                yield f"#calc-heading({level}, {mark}[{self.text(text)}])"
+            case Heading(level, text, group):
+                yield f"#calc-heading({level}, {group or 'none'})[{self.text(text)}]"
             case Paragraph(text, leads):
                 yield f"#calc-paragraph({str(leads).lower()})[{self.text(text)}]"
             case Equation(step, lead):
@@ -77,6 +84,16 @@ class _Writer:
                 yield f"#calc-framed({literal(title)})[\n{inside}\n]"
             case Table():
                 yield from self._table(block)
+            case Signatures(people):
+                signed = ", ".join(
+                    f"({literal(role)}, {literal(name)}, {literal(day)})"
+                    for role, name, day in people
+                )
+                yield f"#calc-signatures({signed})"
+            case Contents(revision):
+                yield f"#calc-contents({literal(revision)})"
+            case Preformatted(text):
+                yield f"#calc-preformatted({literal(text)})"
 
     def _table(self, table: Table) -> Iterator[str]:
         widths = ", ".join(f"{c.width}fr" if c.width else "auto" for c in table.columns)
@@ -84,7 +101,8 @@ class _Writer:
         head = "".join(f"{literal(column.title)}, " for column in table.columns)
         if not any(column.title for column in table.columns):
             head = ""
-        yield f"#calc-table(({widths},), ({aligns},), ({head}),"
+        ticked = str(table.ticked).lower()
+        yield f"#calc-table(({widths},), ({aligns},), ({head}), {ticked},"
         for row in table.rows:
             yield "  " + ", ".join(f"[{self.text(cell)}]" for cell in row) + ","
         yield ")"
@@ -95,7 +113,9 @@ class _Writer:
     def _inline(self, part: Inline) -> str:
         match part:
             case str():
-                return f"#{literal(part)};" if part else ""
+                return f"#{literal(breakable(part))};" if part else ""
+            case Reference(group, text):
+                return f"#calc-reference({group}, {literal(text)});"
             case Symbol():
                 return _equation(_symbol(part), str(part))
             case Value(value, decimals, unit):
@@ -122,6 +142,17 @@ def to_typst(parts: Sequence[Sheet | Block], derivation: Derivation) -> Source:
         for block in part.blocks if isinstance(part, Sheet) else (part,):
             lines.extend(writer.block(block))
     return Source("\n".join(lines), writer.files)
+
+
+def breakable(text: str) -> str:
+    """The text with places to break its long words, so that no cell is overrun.
+
+    >>> breakable("short words stay") == "short words stay", len(breakable("x" * 60))
+    (True, 65)
+    """
+    return re.sub(
+        rf"\S{{{LONGEST_WORD},}}", lambda word: "\u200b".join(_PIECES.findall(word[0])), text
+    )
 
 
 def literal(text: str) -> str:

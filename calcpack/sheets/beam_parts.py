@@ -16,6 +16,7 @@ MARGIN = 8.0
 ROOM = 5.5
 """What a support's symbol wants of the beam, in mm; where supports stand closer it shrinks."""
 SMALLEST = 0.4
+"""The least size of a symbol, as part of its full size."""
 HINGE = 1.1
 """Radius of a hinge in mm."""
 FEW = 12

@@ -34,16 +34,26 @@ class Expression:
     formula: Formula
 
 
-Inline = str | Symbol | Value | Digits | Expression
+@dataclass(frozen=True)
+class Reference:
+    """A step or group elsewhere in the package, with the sheet where it stands."""
+
+    group: int
+    text: str
+
+
+Inline = str | Symbol | Value | Digits | Expression | Reference
 Text = tuple[Inline, ...]
 """A run of text; a plain string in it is shown as typed, never read as markup."""
 
 
 @dataclass(frozen=True)
 class Heading:
+    """``group`` is the number of the group of steps that it opens, if it opens one."""
+
     level: int
     text: Text
-    number: str = ""
+    group: int | None = None
 
 
 @dataclass(frozen=True)
@@ -65,8 +75,11 @@ class Column:
 
 @dataclass(frozen=True)
 class Table:
+    """``ticked`` adds a column of boxes for the checker."""
+
     columns: tuple[Column, ...]
     rows: tuple[tuple[Text, ...], ...]
+    ticked: bool = False
 
 
 @dataclass(frozen=True)
@@ -98,7 +111,39 @@ class Framed:
     blocks: tuple[Block, ...]
 
 
-Block = Heading | Paragraph | Table | Equation | Figure | Beside | Framed
+@dataclass(frozen=True)
+class Signatures:
+    """Lines to sign, (role, name, date) each, beside an empty box for a seal."""
+
+    lines: tuple[tuple[str, str, str], ...]
+
+
+@dataclass(frozen=True)
+class Contents:
+    """The table of contents with sheet numbers, and the sheets in effect with their revision."""
+
+    revision: str
+
+
+@dataclass(frozen=True)
+class Preformatted:
+    """Text as it stands, line by line."""
+
+    text: str
+
+
+Block = (
+    Heading
+    | Paragraph
+    | Table
+    | Equation
+    | Figure
+    | Beside
+    | Framed
+    | Signatures
+    | Contents
+    | Preformatted
+)
 
 
 @dataclass(frozen=True)

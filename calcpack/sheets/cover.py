@@ -1,71 +1,72 @@
-"""Title sheet: what the calculation is, who answers for it, and what it does not cover."""
+"""Title sheet and contents: what the calculation is, and who answers for it."""
 
 from __future__ import annotations
 
-from calcpack.model.request import Calculation, Signature
-from calcpack.sheets.blocks import Block, Column, Heading, Paragraph, Table, Text
+from calcpack.model.request import Signature
+from calcpack.sheets.blocks import (
+    Block,
+    Column,
+    Contents,
+    Heading,
+    Paragraph,
+    Signatures,
+    Table,
+)
+from calcpack.solution import Solution
 
 COVERS = (
     "This package finds, for one statically determinate straight beam, the influence lines of the "
-    "effects asked for, where the travelling loads have to stand, and what they then cause. "
-    "Not covered: section capacity, skew, curvature and grillage action, frames, trusses, arches "
-    "and cables, lift-off, shear deformation, braking, centrifugal and seismic forces."
+    "effects asked for, where the travelling loads have to stand, and what they then cause; every "
+    "equation is printed with its numbers."
+)
+NOT_COVERED = (
+    "Not covered: permanent loads, combinations and resistances; section capacity, skew, curvature "
+    "and grillage action, frames, trusses, arches and cables, lift-off, shear deformation, "
+    "braking, centrifugal and seismic forces, semi-rigid releases."
 )
 CAUTION = (
     "A number on these sheets may be wrong, by its input or by a fault of the program. The "
     "governing code and a licensed engineer decide; nothing here replaces their judgment or an "
     "independent check."
 )
+ROLES = ("Prepared", "Checked", "Approved")
 
 
-def cover_blocks(calculation: Calculation) -> tuple[Block, ...]:
-    """The title sheet."""
+def cover_blocks(solution: Solution) -> tuple[Block, ...]:
+    """The title sheet: identification, status, revisions, signatures and the box for a seal."""
+    calculation = solution.calculation
     cover = calculation.cover
-    blocks: list[Block] = [
+    pairs = (
+        ("Project", cover.project),
+        ("Client", cover.client),
+        ("Calculation", cover.number),
+        ("Revision", solution.calculation.cover.revision),
+        ("Status", calculation.package.status),
+    )
+    revisions = tuple(
+        ((one.mark,), (one.on.isoformat() if one.on else "",), (one.text,))
+        for one in cover.revisions
+    )
+    columns = (Column("revision"), Column("date"), Column("what changed", width=1))
+    signatures = (cover.prepared, cover.checked, cover.approved)
+    return (
         Heading(1, (cover.title,)),
-        _pairs(
-            ("Project", cover.project),
-            ("Client", cover.client),
-            ("Calculation", cover.number),
-            ("Status", calculation.package.status),
-        ),
         Table(
-            (Column("", width=2), Column("name", width=3), Column("date", width=2)),
-            (
-                _signed("Prepared", cover.prepared),
-                _signed("Checked", cover.checked),
-                _signed("Approved", cover.approved),
-            ),
+            (Column("", width=1), Column("", width=4)),
+            tuple(((label,), (said or "—",)) for label, said in pairs),
         ),
-    ]
-    if cover.revisions:
-        rows = tuple(
-            ((one.mark,), (one.on.isoformat() if one.on else "",), (one.text,))
-            for one in cover.revisions
-        )
-        columns = (Column("revision"), Column("date"), Column("what changed", width=1))
-        blocks.append(Table(columns, rows))
-    blocks += [Paragraph((COVERS,)), Paragraph((CAUTION,))]
-    if calculation.assumptions:
-        blocks.append(Heading(2, ("Assumptions",)))
-        columns = (Column("no."), Column("assumption", width=3), Column("basis", width=2))
-        blocks.append(
-            Table(
-                (*columns, Column("status")),
-                tuple(
-                    ((str(n),), (a.text,), (a.basis,), ("open" if a.open else "settled",))
-                    for n, a in enumerate(calculation.assumptions, start=1)
-                ),
-            )
-        )
-    return tuple(blocks)
+        *((Table(columns, revisions),) if revisions else ()),
+        Signatures(tuple(_line(*one) for one in zip(ROLES, signatures, strict=True))),
+        Paragraph((COVERS,)),
+        Paragraph((NOT_COVERED,)),
+        Paragraph((CAUTION,)),
+    )
 
 
-def _pairs(*pairs: tuple[str, str]) -> Table:
-    rows = tuple(((label,), (said,)) for label, said in pairs)
-    return Table((Column("", width=2), Column("", width=5)), rows)
+def contents_blocks(solution: Solution) -> tuple[Block, ...]:
+    """Contents with sheet numbers, and the sheets in effect."""
+    return Heading(1, ("Contents",)), Contents(solution.calculation.cover.revision)
 
 
-def _signed(label: str, signature: Signature) -> tuple[Text, ...]:
-    day = signature.on.isoformat() if signature.on else ""
-    return ((label,), (signature.by,), (day,))
+def _line(role: str, signature: Signature) -> tuple[str, str, str]:
+    return role, signature.by, signature.on.isoformat() if signature.on else ""

@@ -2,24 +2,20 @@
 
 from __future__ import annotations
 
-from calcpack.model.request import Calculation
+from collections.abc import Iterator
+
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table
 from calcpack.sheets.figures import beam_figure
-
-SIGNS = (
-    "Signs: reaction upward +; shear + when the outside forces left of the cut push up; moment "
-    "sagging +; moment reaction (couple C of a support) anticlockwise on the beam +. Stations run "
-    "from the left end. The unit load P = 1 acts downward and has no unit: a line of moment is a "
-    "length, a line of shear or reaction a pure number. A load at a support stands on the support."
-)
+from calcpack.solution import Solution
 
 
-def data_blocks(calculation: Calculation) -> tuple[Block, ...]:
-    """The data echo."""
+def data_blocks(solution: Solution) -> tuple[Block, ...]:
+    """The beam to scale, the names that symbols shorten, and every value stated."""
+    calculation = solution.calculation
     columns = (
-        Column("value", width=4),
-        Column("what it is", width=4),
-        Column("said", "right", width=3),
+        Column("value", width=5),
+        Column("what it is", width=3),
+        Column("said", width=6),
         Column("unit"),
         Column("source"),
     )
@@ -27,7 +23,7 @@ def data_blocks(calculation: Calculation) -> tuple[Block, ...]:
         (
             (entry.path,),
             (entry.label,),
-            (entry.said,),
+            (entry.said or "—",),
             (entry.unit,),
             ("entered" if entry.entered else "default",),
         )
@@ -36,6 +32,14 @@ def data_blocks(calculation: Calculation) -> tuple[Block, ...]:
     return (
         Heading(1, ("Data",)),
         Figure(beam_figure(calculation.beam, calculation.units)),
-        Paragraph((SIGNS,)),
-        Table(columns, rows),
+        *_shortened(solution),
+        Table(columns, rows, ticked=True),
     )
+
+
+def _shortened(solution: Solution) -> Iterator[Block]:
+    tags = solution.calculation.beam.tags
+    rows = tuple(((tag,), (name,)) for name, tag in tags.items() if tag != name)
+    if rows:
+        yield Paragraph(("Long names are shortened in symbols:",), leads=True)
+        yield Table((Column("in symbols", width=1), Column("name", width=6)), rows)

@@ -166,7 +166,9 @@ def placement_figure(
     placed = moved(bands, downs)
     written = [item for item in itertools.chain(*placed) if isinstance(item, Label)]
     drops = [
-        line for dot in dots for line in _upright(dot.centre[0], downs[1], downs[3] + foot, written)
+        line
+        for dot in dots
+        for line in _drop_line(dot.centre[0], downs[1], downs[3] + foot, written)
     ]
     legend, on_beam, words, on_line = placed
     load = f"a load heading {heading}" if axles else "uniform load"
@@ -208,7 +210,7 @@ def _loads(
     return (*items, *names(tags, (), head - CLEAR, -1, width))
 
 
-def _upright(x: float, top: float, bottom: float, written: Sequence[Label]) -> list[Line]:
+def _drop_line(x: float, top: float, bottom: float, written: Sequence[Label]) -> list[Line]:
     """A thin line down the paper, interrupted where anything is written."""
     boxes = [label.box.grown(0.4) for label in written]
     gaps = sorted((box.top, box.bottom) for box in boxes if box.left < x < box.right)
@@ -234,7 +236,9 @@ def _beam_words(beam: Beam, unit: str) -> str:
     parts = [
         f"{kind} {name} at {at}" for (kind, name, _), at in zip(places, texts[1:], strict=True)
     ]
-    return f"Beam of {texts[0]} {unit} with {len(beam.sections)} sections: {', '.join(parts)}."
+    count = len(beam.sections)
+    parts += [f"{count} section{'s' if count > 1 else ''}"] if count else []
+    return f"Beam of {texts[0]} {unit}: {', '.join(parts)}."
 
 
 def _line_words(line: Piecewise, decimals: int) -> str:

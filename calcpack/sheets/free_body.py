@@ -30,7 +30,7 @@ NEXT = 2.6
 """Between arrows of one sense at one station, in mm."""
 RADIUS = 3.4
 """Of a couple's arc, in mm."""
-BESIDE = 8.0
+BESIDE = 7.4
 """Longest name of a couple that stands beside its arc beyond an end, in mm."""
 RING = 2.1
 """Radius of the ring about the centre of moments, in mm."""
@@ -163,7 +163,7 @@ def free_body_figure(body: FreeBody, unit: str, width: float = WIDTH) -> Drawing
         items.append(turn)
         text = Text((runs_of(couple.symbol),))
         if outward and text.width <= BESIDE:
-            near = x + outward * (MARGIN - BESIDE)
+            near = x + outward * (RADIUS + 1.4)
             left = near if outward > 0 else near - text.width
             items.append(Label(text, (left, -text.height / 2)))
         else:

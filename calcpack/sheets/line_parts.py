@@ -95,7 +95,8 @@ def ordinates(
     both stand in one label, left | right. Zero is labelled at jumps only.
 
     Where the labels of one side of the axis do not all find room at their points they stand in a
-    row with leaders. With ``at`` given only those breakpoints are labelled, each if it finds room.
+    row with leaders (beyond some fifty, those that found room stay). With ``at`` given only those
+    breakpoints are labelled, each if it finds room.
     """
     placed: tuple[Item, ...] = ()
     drop = drop_of(line)

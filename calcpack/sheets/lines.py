@@ -36,7 +36,7 @@ NAMES = {
     "shear": "Shear at {}",
     "moment": "Moment at {}",
 }
-BODY_WIDTH = 78.0
+BODY_WIDTH = 74.0
 """Width of a free body beside its equations, in mm."""
 
 
@@ -71,7 +71,7 @@ def model_blocks(solution: Solution) -> tuple[Block, ...]:
     for group in solution.derivation.groups:
         if isinstance(group, StationGroup):
             derived = [
-                Heading(2, ("Stations",), str(group.number)),
+                Heading(2, ("Stations",), group.number),
                 step_table(solution, group.steps),
             ]
     return (
@@ -143,7 +143,7 @@ def step_table(solution: Solution, steps: tuple[Step, ...]) -> Table:
         )
         for step in steps
     )
-    return Table(columns, rows)
+    return Table(columns, rows, ticked=True)
 
 
 def result_of(solution: Solution, step: Step) -> Value:
@@ -163,14 +163,10 @@ def _derived(solution: Solution, group: LineGroup, reason: str) -> Iterator[Bloc
         Equation(group.balance, f"{what[0].upper()}{what[1:]}, {sense}"),
         *(Equation(step, step.condition) for step in group.forms),
     )
-    yield Heading(2, (effect_title(group.quantity), ": ", symbol_of(group.quantity)), _no(group))
+    yield Heading(2, (effect_title(group.quantity), ": ", symbol_of(group.quantity)), group.number)
     yield Paragraph((reason,), leads=True)
     yield Beside(equations, Figure(free_body_figure(body, unit, BODY_WIDTH)))
     yield _rows(solution, group)
-
-
-def _no(group: LineGroup | AreaGroup) -> str:
-    return str(group.number)
 
 
 def _rows(solution: Solution, group: LineGroup) -> Table:
@@ -204,7 +200,7 @@ def _rows(solution: Solution, group: LineGroup) -> Table:
     unit = units[group.rows[0].step.kind]
     if unit:
         columns = (*columns[:4], Column(f"result, {unit}", "right"), columns[5])
-    return Table(columns, tuple(rows))
+    return Table(columns, tuple(rows), ticked=True)
 
 
 def _numbers(step: Step) -> Text:
@@ -220,7 +216,7 @@ def _drawn(
     unit = SYSTEMS[calculation.units][group.rows[0].step.kind]
     line = next(found.line for found in solution.lines if found.effect == effect)
     decimals = max(solution.derivation.decimals[f"step:{row.step.key}"] or 4 for row in group.rows)
-    yield Heading(2, ("Line and areas: ", effect_title(effect)), _no(areas))
+    yield Heading(2, ("Line and areas: ", effect_title(effect)), areas.number)
     yield Paragraph(
         (
             "Ordinates from ",

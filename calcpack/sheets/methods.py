@@ -1,8 +1,12 @@
-"""Second methods: same program, same input, other ways to the same lines."""
+"""Second methods: same program, same input, other ways to the same lines; a worksheet by hand."""
 
 from __future__ import annotations
 
-from calcpack.sheets.blocks import Block, Column, Heading, Paragraph, Table
+from fractions import Fraction
+
+from calcpack.exact.units import SYSTEMS
+from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Value
+from calcpack.sheets.figures import beam_figure
 from calcpack.sheets.lines import effect_title
 from calcpack.solution import Solution
 
@@ -10,8 +14,14 @@ WORDS = (
     "The lines were found again by two other methods, in the same program and from the same input: "
     "they guard against a fault in the derivation, not against a wrong input. Kinematic statement, "
     "in exact fractions: a unit discontinuity at the quantity displaces the beam into its "
-    "influence line. Stiffness solution, in floating decimals: Euler-Bernoulli elements between "
-    "the key stations. The bound is on the difference, as a part of 1 + the largest ordinate."
+    "influence line. Stiffness solution, in floating point: Euler-Bernoulli elements between "
+    "the key stations. The bound is on the difference, as a part of 1 + the largest ordinate. The "
+    "placements were compared with a sweep of each train over the stiffness ordinates in 2000 "
+    "steps: it never exceeds the value found, nor falls short of it by more than a step allows."
+)
+BY_HAND = (
+    "For a check without sight of the derivation: from the data alone, find each quantity for the "
+    "load at each station by a method of your own, then compare with the sheets named at the right."
 )
 
 
@@ -34,4 +44,56 @@ def method_blocks(solution: Solution) -> tuple[Block, ...]:
         )
         for line in solution.lines
     )
-    return Heading(1, ("Second methods",)), Paragraph((WORDS,)), Table(columns, rows)
+    return (
+        Heading(1, ("Second methods",)),
+        Paragraph((WORDS,)),
+        Table(columns, rows),
+        Heading(2, ("Equilibrium of the whole beam",)),
+        *_equilibrium(solution),
+    )
+
+
+def _equilibrium(solution: Solution) -> tuple[Block, ...]:
+    """The sum of all reactions under the unit load at each key station: one, wherever it stands."""
+    reactions = [one for one in solution.unknowns if one.kind == "reaction"]
+    rows = []
+    for station in solution.calculation.beam.stations:
+        values = [solution.unknowns[one].left(station.at) for one in reactions]
+        rows.append(
+            (
+                (station.name or str(station.at),),
+                (Value(sum(values, Fraction(0)), 4),),
+            )
+        )
+    names = " + ".join(f"R_{one.index}" for one in reactions)
+    words = f"The reactions just found ({names}) carry the unit load wherever it stands:"
+    columns = (Column("load at (just left)", width=2), Column("sum of reactions", "right"))
+    return Paragraph((words,), leads=True), Table(columns, tuple(rows))
+
+
+def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
+    """Inputs only, and blank tables for an independent check by hand."""
+    calculation = solution.calculation
+    units = SYSTEMS[calculation.units]
+    blocks: list[Block] = [
+        Heading(1, ("Worksheet for an independent check",)),
+        Paragraph((BY_HAND,)),
+        Figure(beam_figure(calculation.beam, calculation.units)),
+    ]
+    stations = calculation.beam.stations
+    columns = (
+        Column("effect", width=4),
+        Column("load at", width=3),
+        Column("found by hand", width=3),
+        Column("on the sheets", width=3),
+        Column("agrees", width=1),
+    )
+    for line in solution.lines:
+        unit = units["number" if line.effect.kind in ("reaction", "shear") else "length"]
+        title = effect_title(line.effect) + (f", {unit}" if unit else "")
+        rows = tuple(
+            ((title if not n else "",), (station.name or str(station.at),), ("",), ("",), ("",))
+            for n, station in enumerate(stations)
+        )
+        blocks.append(Table(columns, rows))
+    return tuple(blocks)

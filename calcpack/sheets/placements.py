@@ -11,7 +11,17 @@ from calcpack.derive.steps import PlacementGroup, TrainGroup
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.loads import MovingLoad
 from calcpack.moving.critical import Candidate, Governing, total_effect
-from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Text, Value
+from calcpack.sheets.blocks import (
+    Block,
+    Column,
+    Figure,
+    Heading,
+    Paragraph,
+    Reference,
+    Table,
+    Text,
+    Value,
+)
 from calcpack.sheets.figures import placement_figure
 from calcpack.sheets.lines import effect_title, result_of, step_table
 from calcpack.solution import Solution
@@ -32,7 +42,7 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
         Column(f"lead axle at, {length}", "right"),
         Column("heading"),
         Column("next", "right"),
-        Column("step", "right"),
+        Column("proof", "right"),
     )
     rows = []
     for group in solution.derivation.groups:
@@ -49,7 +59,7 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
                     (units[step.kind],),
                     *_lead(found),
                     (Value(nearest, result.decimals),) if nearest is not None else ("",),
-                    (step.id,),
+                    (Reference(group.number, step.id),),
                 )
             )
     return (
@@ -88,7 +98,7 @@ def _lead(found: Governing) -> tuple[Text, Text]:
 
 def _train(solution: Solution, group: TrainGroup) -> Iterator[Block]:
     load = group.load
-    yield Heading(2, ("Train: ", load.name), str(group.number))
+    yield Heading(2, ("Train: ", load.name), group.number)
     if group.steps:
         yield Paragraph(("Distance of each axle behind the lead axle.",))
         yield step_table(solution, group.steps)
@@ -100,7 +110,7 @@ def _placement(solution: Solution, group: PlacementGroup, swept: float) -> Itera
     found, calculation = group.governing, solution.calculation
     units = SYSTEMS[calculation.units]
     title = f"{effect_title(group.effect)}: {EXTREMES[found.sense]} under {group.load.name}"
-    yield Heading(2, (title,), str(group.number))
+    yield Heading(2, (title,), group.number)
     if found.chosen is None and not found.uniform:
         yield Paragraph(("No position of the load works in this sense: it stays away.",))
     else:
@@ -157,9 +167,9 @@ def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[
             ". ",
         ]
     if found.ties:
-        words.append(f"The same value is found at {len(found.ties)} other position(s). ")
-    sixth = float(f"{swept:.6g}")
-    words.append(f"A sweep in small steps over the stiffness ordinates finds {sixth:g} {unit}.")
+        words.append(f"The same value is found at {_others(len(found.ties))}. ")
+    sixth = f"{swept:.6g}".replace("-", "−") if swept else "0"
+    words.append(f"A sweep in small steps over the stiffness ordinates finds {sixth} {unit}.")
     yield Paragraph(tuple(words))
     if found.near:
         columns = (
@@ -178,6 +188,10 @@ def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[
             for one in found.near
         )
         yield Table(columns, rows)
+
+
+def _others(count: int) -> str:
+    return "one other position" if count == 1 else f"{count} other positions"
 
 
 def _value_of(load: MovingLoad, found: Governing, candidate: Candidate) -> Fraction:

@@ -8,8 +8,8 @@ from fractions import Fraction
 from typing import Literal
 
 from calcpack.exact.formula import Symbol
-from calcpack.model.beam import Beam, Station
-from calcpack.model.request import Effect
+from calcpack.model.beam import Beam, Face, Station
+from calcpack.model.request import Effect, EffectKind
 
 LETTERS = {"reaction": "R", "moment reaction": "C", "shear": "V", "moment": "M"}
 EQUATIONS_OF_BODY = 2
@@ -21,7 +21,7 @@ def symbol_of(effect: Effect) -> Symbol:
     >>> str(symbol_of(Effect("shear", "B", Fraction(40), "left")))
     'V_B,left'
     """
-    return Symbol(LETTERS[effect.kind], effect.at, effect.face or "")
+    return Symbol(LETTERS[effect.kind], effect.index, effect.face or "")
 
 
 def key_of(effect: Effect) -> str:
@@ -116,9 +116,9 @@ def cut_into_bodies(beam: Beam) -> System:
     actions: list[Action] = []
     for station in beam.stations:
         if station.release is None:
-            actions += _support_actions(station)
+            actions += _support_actions(beam, station)
             continue
-        on_left, pin, on_right = _release_actions(station)
+        on_left, pin, on_right = _release_actions(beam, station)
         bodies.append(_body(beam, start, station.at, [*actions, *on_left]))
         if pin:
             bodies.append(_body(beam, station.at, station.at, pin))
@@ -132,34 +132,42 @@ def _body(beam: Beam, start: Fraction, end: Fraction, actions: list[Action]) -> 
     return Body(start, end, place_name(beam, start), place_name(beam, end), tuple(actions))
 
 
-def _support_actions(station: Station) -> Iterator[Action]:
+def _support_actions(beam: Beam, station: Station) -> Iterator[Action]:
     support = station.support
     if support is None:
         return
     if support.holds_vertical:
-        yield Action(Effect("reaction", support.name, support.at), 1, 0, 0)
+        yield Action(_effect(beam, "reaction", support.name, support.at), 1, 0, 0)
     if support.holds_rotation:
-        yield Action(Effect("moment reaction", support.name, support.at), 0, -1, 0)
+        yield Action(_effect(beam, "moment reaction", support.name, support.at), 0, -1, 0)
 
 
-def _release_actions(station: Station) -> tuple[list[Action], list[Action], list[Action]]:
+def _effect(
+    beam: Beam, kind: EffectKind, name: str, at: Fraction, face: Face | None = None
+) -> Effect:
+    return Effect(kind, name, at, face, beam.tags[name])
+
+
+def _release_actions(
+    beam: Beam, station: Station
+) -> tuple[list[Action], list[Action], list[Action]]:
     """What acts at a release on the body to the left, on the pin, and on the body to the right."""
     release, support = station.release, station.support
     assert release is not None
-    held = list(_support_actions(station))
+    held = list(_support_actions(beam, station))
     if held and support is not None and support.face is None:
-        left = Effect("shear", station.name, station.at, "left")
-        right = Effect("shear", station.name, station.at, "right")
+        left = _effect(beam, "shear", station.name, station.at, "left")
+        right = _effect(beam, "shear", station.name, station.at, "right")
         return (
             [Action(left, -1, 0, 1)],
             [Action(left, 1, 0, -1), *held, Action(right, -1, 0, 1)],
             [Action(right, 1, 0, -1)],
         )
     if release.kind == "hinge":
-        passed = Effect("shear", release.name, station.at)
+        passed = _effect(beam, "shear", release.name, station.at)
         end, beginning = Action(passed, -1, 0, 1), Action(passed, 1, 0, -1)
     else:
-        passed = Effect("moment", release.name, station.at)
+        passed = _effect(beam, "moment", release.name, station.at)
         end, beginning = Action(passed, 0, -1, 1), Action(passed, 0, 1, -1)
     held_left = held if support is not None and support.face == "left" else []
     held_right = held if support is not None and support.face == "right" else []

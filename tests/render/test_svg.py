@@ -176,12 +176,22 @@ def test_texts_stand_in_the_pdf_where_they_were_laid_out() -> None:
         [(0, 11, (0, half)), (11, 22, (half * 11, -half)), (22, 40, (0, -half))]
     )
     beam = replace(beam, supports=supports)
-    checked = 0
-    for figure in (beam_figure(beam, "SI"), line_figure(beam, line, "M at 2", "m", 3, "SI")):
+    crowd = make_beam(240, [(20 * at, "roller") for at in range(13)])
+    piers = tuple(replace(s, name=f"Pier number {s.name}") for s in crowd.supports)
+    # A page of mostly turned text is read column by column: there only those texts are looked for.
+    figures = (
+        (beam_figure(beam, "SI"), False),
+        (line_figure(beam, line, "M at 2", "m", 3, "SI"), False),
+        (beam_figure(replace(crowd, supports=piers), "SI"), True),
+    )
+    checked = {False: 0, True: 0}
+    for figure, turned in figures:
         with pdfium.PdfDocument(compiled(figure)) as pdf:
             text_page = pdf[0].get_textpage()
             for label in figure.items:
                 if not isinstance(label, Label) or len(label.text.lines) > 1:
+                    continue
+                if label.turned != turned:
                     continue
                 box = label.box.grown(0.1)
                 height = figure.height
@@ -192,6 +202,7 @@ def test_texts_stand_in_the_pdf_where_they_were_laid_out() -> None:
                     and top <= (height - box.top) * MM
                     for left, bottom, right, top in boxes_of(text_page, str(label.text))
                 ), label
-                checked += 1
+                checked[turned] += 1
             text_page.close()
-    assert checked > 15
+    assert checked[False] > 15
+    assert checked[True] == 13

@@ -208,6 +208,21 @@ def test_areas_are_those_under_the_curve() -> None:
     assert f"−{-down:.1f} ft²" in found
 
 
+def test_areas_are_written_inside_them() -> None:
+    checked = 0
+    for seed in range(12):
+        line = random_line(GIRDER, Random(seed))
+        items = line_figure(GIRDER, line, "M at 1", "ft", 3, "US").items
+        lobes = [i for i in items if isinstance(i, Polygon) and i.fill in ("tone", "hatch")]
+        for label in items:
+            if isinstance(label, Label) and str(label.text).endswith(("ft²", "+", "−")):
+                box = label.box
+                corners = [(x, y) for x in (box.left, box.right) for y in (box.top, box.bottom)]
+                assert any(all(map(lobe.holds, corners)) for lobe in lobes)
+                checked += 1
+    assert checked > 20
+
+
 @pytest.mark.parametrize(
     ("unit", "area"), [("m", "+200.0 m²"), ("", "+200.0 m"), ("mm", "+200.0 mm·m")]
 )
@@ -252,8 +267,8 @@ def test_axles_stand_on_the_beam_over_their_ordinates() -> None:
 
 def test_the_alternative_text_says_what_the_figure_shows() -> None:
     assert beam_figure(GIRDER, "US").alt == (
-        "Beam of 128 ft with 1 sections: pin A at 0, roller B at 40, roller C at 88, "
-        "roller D at 128, hinge r1 at 52, hinge r2 at 76."
+        "Beam of 128 ft: pin A at 0, roller B at 40, roller C at 88, roller D at 128, "
+        "hinge r1 at 52, hinge r2 at 76, 1 section."
     )
     alt = line_figure(GIRDER, SHEAR, "V at 1", "", 2, "US").alt
     assert alt.startswith("Influence line of V at 1: 0.00 at 0, -0.50 | 0.50 at 20, 0.00 at 40, ")
