@@ -33,7 +33,8 @@ def line_group(book: Book, quantity: Effect, source: PlanStep | Cut, line: Piece
     balance = _balance(book, root, equation)
     forms = _forms(book, root, quantity, equation, kind)
     rows = tuple(_rows(book, root, quantity, equation, line, kind))
-    group = LineGroup(number, quantity, source, balance, forms, rows)
+    centre = None if equation.about is None else book.place(equation.about).symbol
+    group = LineGroup(number, quantity, source, balance, centre, forms, rows)
     book.close_group(group)
     return group
 
@@ -58,9 +59,10 @@ def _forms(
     """The equation solved for its quantity: with the load on the free body, and elsewhere."""
     forms = []
     left = symbol_of(quantity)
-    for loaded, words in ((True, f"load on {equation.name}"), (False, "load elsewhere")):
-        if loaded and equation.start == equation.end:
-            continue
+    regions = [(True, f"load on {equation.name}"), (False, "load elsewhere")]
+    if equation.start == equation.end:
+        regions = [(False, "wherever the load stands")]
+    for loaded, words in regions:
         load = variable_place() if loaded else None
         formula = _solved(book, equation, quantity, _symbol_only, load)
         key = f"{root}/{'loaded' if loaded else 'elsewhere'}"

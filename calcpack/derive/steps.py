@@ -95,13 +95,15 @@ class LineGroup:
     """One influence line: the equation that gives it, and its value at every key station.
 
     ``source`` is the plan's step or the section's cut. ``balance`` is the equation of equilibrium,
-    ``forms`` its solved forms by region of the load.
+    ``centre`` the coordinate about which its moments are taken, ``forms`` its solved forms by
+    region of the load.
     """
 
     number: int
     quantity: Effect
     source: PlanStep | Cut
     balance: Step
+    centre: Symbol | None
     forms: tuple[Step, ...]
     rows: tuple[Row, ...]
 

@@ -58,7 +58,7 @@ def read(data: bytes, source: str = "calc.toml") -> Calculation:
         plain({key: value for key, value in document.items() if key != "cover"}),
         inputs(reading),
         echo(reading),
-        data.decode("utf-8-sig"),
+        data.decode("utf-8-sig").replace("\r\n", "\n"),
     )
 
 

@@ -55,4 +55,4 @@ def read_assumptions(reading: Reading) -> tuple[Assumption, ...]:
 
 def read_package(reading: Reading) -> Package:
     """Status and paper."""
-    return Package(reading.value("package.status"), reading.value("package.paper"))
+    return Package(*(reading.value(f"package.{key}") for key in ("status", "paper", "detail")))

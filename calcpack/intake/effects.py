@@ -66,14 +66,14 @@ class _Wanted:
                 self.reading.refuse(item, "must be stated once")
             elif kind:
                 kinds.append(kind)
-        side = self.reading.value(f"{path}.side")
+        side, show = self.reading.value(f"{path}.side"), self.reading.value(f"{path}.show")
         places = {item: self._places(item) for item in self.reading.items(f"{path}.at")}
         self._check_side(f"{path}.side", side, kinds, set(itertools.chain(*places.values())))
         for item, stations in places.items():
             held = {kind: self._held(kind, item, stations) for kind in kinds}
             pairs = itertools.product(stations, kinds)
             effects = (self._effects(kind, at, side) for at, kind in pairs if at in held[kind])
-            self._add(item, list(itertools.chain(*effects)))
+            self._add(item, [replace(one, show=show) for one in itertools.chain(*effects)])
 
     def add_default(self) -> None:
         """Every reaction and moment reaction, then moment and shear at each section."""

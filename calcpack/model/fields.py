@@ -60,7 +60,7 @@ def _station(label: str, required: bool = True) -> Field:
 
 _NAME = "unique among supports, releases and sections"
 _SIDES = ("left", "right")
-_DETAILS = ("plan", "table")
+_DETAILS = ("every equation", "plan", "table")
 
 FIELDS: Mapping[str, Field] = {
     "format": Field("Format", "choice", required=True, choices=(1,)),
@@ -92,9 +92,7 @@ FIELDS: Mapping[str, Field] = {
         choices=("For review", "Issued"),
     ),
     "package.paper": Field("Paper", "choice", default="letter", choices=("letter", "A4")),
-    "package.detail": Field(
-        "Detail", "choice", default="every equation", choices=("every equation",), later=_DETAILS
-    ),
+    "package.detail": Field("Detail", "choice", default="every equation", choices=_DETAILS),
     "assumptions": _tables("Assumptions"),
     "assumptions[].text": Field("Assumption", "long text", required=True),
     "assumptions[].basis": Field("Basis of the assumption", "text"),
@@ -174,7 +172,7 @@ FIELDS: Mapping[str, Field] = {
         required=True,
     ),
     "effects[].side": Field("Side", "choice", help="without it both faces", choices=_SIDES),
-    "effects[].show": Field("Shown", "choice", choices=("every equation",), later=_DETAILS),
+    "effects[].show": Field("Shown", "choice", choices=_DETAILS),
     "trains": _later("Trains"),
     "moving": _tables("Moving loads"),
     "moving[].name": Field("Moving load", "name", required=True),

@@ -12,6 +12,7 @@ from calcpack.model.beam import Beam, Face
 from calcpack.model.loads import MovingLoad
 
 EffectKind = Literal["reaction", "moment reaction", "shear", "moment"]
+Detail = Literal["every equation", "plan", "table"]
 Paper = Literal["letter", "A4"]
 Status = Literal["For review", "Issued"]
 
@@ -27,6 +28,7 @@ class Effect:
         station: where it is.
         face: the side of the place at which the beam is cut, where two values exist; else None.
         tag: what stands in symbols for a long name; "" where the name itself does.
+        show: how much of its derivation is printed; None where the package's detail holds.
 
     >>> Effect("shear", "B", Fraction(40), "left").label
     'shear at B, left face'
@@ -37,6 +39,7 @@ class Effect:
     station: Fraction
     face: Face | None = None
     tag: str = field(default="", compare=False)
+    show: Detail | None = field(default=None, compare=False)
 
     @property
     def index(self) -> str:
@@ -89,6 +92,7 @@ class Cover:
 class Package:
     status: Status = "For review"
     paper: Paper = "letter"
+    detail: Detail = "every equation"
 
 
 @dataclass(frozen=True)

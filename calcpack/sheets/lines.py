@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from fractions import Fraction
 
+from calcpack.derive.book import DECIMALS
 from calcpack.derive.steps import AreaGroup, LineGroup, StationGroup, Step
 from calcpack.exact.units import SYSTEMS
-from calcpack.model.beam import Beam
-from calcpack.model.request import Effect
+from calcpack.model.request import Detail, Effect
 from calcpack.sheets.blocks import (
     Beside,
     Block,
@@ -24,11 +25,10 @@ from calcpack.sheets.blocks import (
     Value,
 )
 from calcpack.sheets.figures import line_figure
-from calcpack.sheets.free_body import Couple, Force, FreeBody, Mark, free_body_figure
+from calcpack.sheets.free_body import free_body_figure, free_body_of
 from calcpack.solution import Solution
-from calcpack.statics.equation import Equation as Equilibrium
 from calcpack.statics.plan import PlanStep, equation_in_words
-from calcpack.statics.system import place_name, symbol_of
+from calcpack.statics.system import symbol_of
 
 NAMES = {
     "reaction": "Reaction of support {}",
@@ -38,6 +38,8 @@ NAMES = {
 }
 BODY_WIDTH = 74.0
 """Width of a free body beside its equations, in mm."""
+MOST_ROWS = 200
+"""A longer table of ordinates is printed without the numbers of each row."""
 
 
 def effect_title(effect: Effect) -> str:
@@ -63,7 +65,7 @@ def model_blocks(solution: Solution) -> tuple[Block, ...]:
             (symbol_of(step.unknown),),
             (step.equation.name,),
             (equation_in_words(beam, step.equation),),
-            (step.reason,),
+            with_symbols(solution, step.reason),
         )
         for number, step in enumerate(solution.plan, start=1)
     )
@@ -76,7 +78,7 @@ def model_blocks(solution: Solution) -> tuple[Block, ...]:
             ]
     return (
         Heading(1, ("Model",)),
-        Paragraph((f"The beam is {found.kind}: {found.reason}.",)),
+        Paragraph(with_symbols(solution, f"The beam is {found.kind}: {found.reason}.")),
         Heading(2, ("Plan of solution",)),
         Paragraph(
             (
@@ -94,7 +96,7 @@ def unknown_blocks(solution: Solution) -> tuple[Block, ...]:
     blocks: list[Block] = [Heading(1, ("Unknowns",))]
     for group in solution.derivation.groups:
         if isinstance(group, LineGroup) and isinstance(group.source, PlanStep):
-            blocks += _derived(solution, group, group.source.reason)
+            blocks += _derived(solution, group, group.source.reason, detail_of(solution, group))
     return tuple(blocks)
 
 
@@ -116,7 +118,7 @@ def line_blocks(solution: Solution) -> tuple[Block, ...]:
                 f"Cut at {found.effect.at} and keep the part on the {found.cut.keeps}, "
                 "where no more forces act than on the other; the unknowns are known by now."
             )
-            blocks += _derived(solution, group, reason)
+            blocks += _derived(solution, group, reason, detail_of(solution, group))
         blocks += _drawn(solution, found.effect, group, areas[found.effect])
     return tuple(blocks)
 
@@ -152,33 +154,50 @@ def result_of(solution: Solution, step: Step) -> Value:
     return Value(step.value, solution.derivation.decimals[f"step:{step.key}"])
 
 
-def _derived(solution: Solution, group: LineGroup, reason: str) -> Iterator[Block]:
+def _derived(solution: Solution, group: LineGroup, reason: str, detail: Detail) -> Iterator[Block]:
     beam = solution.calculation.beam
     equation = group.source.equation
     unit = SYSTEMS[solution.calculation.units]["length"]
-    body = free_body_of(beam, equation)
-    sense = "up +" if equation.about is None else "clockwise +"
-    what = equation_in_words(beam, equation)
-    equations = (
-        Equation(group.balance, f"{what[0].upper()}{what[1:]}, {sense}"),
-        *(Equation(step, step.condition) for step in group.forms),
-    )
     yield Heading(2, (effect_title(group.quantity), ": ", symbol_of(group.quantity)), group.number)
-    yield Paragraph((reason,), leads=True)
-    yield Beside(equations, Figure(free_body_figure(body, unit, BODY_WIDTH)))
-    yield _rows(solution, group)
+    if detail != "table":
+        body = free_body_of(beam, equation, group.centre)
+        sense = "up +" if equation.about is None else "clockwise +"
+        what = equation_in_words(beam, equation)
+        equations = (
+            Equation(group.balance, f"{what[0].upper()}{what[1:]}, {sense}"),
+            *(Equation(step, step.condition) for step in group.forms),
+        )
+        yield Paragraph(with_symbols(solution, reason), leads=True)
+        yield Beside(equations, Figure(free_body_figure(body, unit, BODY_WIDTH)))
+    yield _rows(solution, group, detail)
 
 
-def _rows(solution: Solution, group: LineGroup) -> Table:
+def detail_of(solution: Solution, group: LineGroup) -> Detail:
+    """How much of a derivation is printed: as asked for, but of a long table not every number."""
+    asked = group.quantity.show or solution.calculation.package.detail
+    return "plan" if asked == "every equation" and len(group.rows) > MOST_ROWS else asked
+
+
+def with_symbols(solution: Solution, words: str) -> Text:
+    """Words in which the symbols of the unknowns are set as symbols."""
+    known = {str(symbol_of(one)): symbol_of(one) for one in solution.unknowns}
+    longest_first = sorted(known, key=len, reverse=True)
+    pattern = "|".join(re.escape(name) for name in longest_first)
+    return tuple(known.get(part, part) for part in re.split(f"({pattern})", words) if part)
+
+
+def _rows(solution: Solution, group: LineGroup, detail: Detail) -> Table:
     units = SYSTEMS[solution.calculation.units]
     second = solution.second.stiffness[group.quantity]
     stations = [station.at for station in solution.calculation.beam.stations]
+    unit = units[group.rows[0].step.kind]
+    in_full = detail == "every equation"
     columns = (
         Column("step", "right"),
         Column("load at", width=2),
         Column("on body"),
-        Column("with numbers", width=5),
-        Column("result", "right"),
+        *((Column("with numbers", width=5),) if in_full else ()),
+        Column(f"result, {unit}" if unit else "result", "right"),
         Column("stiffness", "right"),
     )
     rows = []
@@ -192,14 +211,11 @@ def _rows(solution: Solution, group: LineGroup) -> Table:
                 (row.step.id,),
                 (where,),
                 ("yes" if row.loaded else "no",),
-                _numbers(row.step),
+                *((_numbers(row.step),) if in_full else ()),
                 (result,),
                 (Value(Fraction(float(other)), result.decimals or 4),),
             )
         )
-    unit = units[group.rows[0].step.kind]
-    if unit:
-        columns = (*columns[:4], Column(f"result, {unit}", "right"), columns[5])
     return Table(columns, tuple(rows), ticked=True)
 
 
@@ -217,38 +233,15 @@ def _drawn(
     line = next(found.line for found in solution.lines if found.effect == effect)
     decimals = max(solution.derivation.decimals[f"step:{row.step.key}"] or 4 for row in group.rows)
     yield Heading(2, ("Line and areas: ", effect_title(effect)), areas.number)
-    yield Paragraph(
-        (
-            "Ordinates from ",
-            _cited(group),
-            "; areas by trapezia between the zeros.",
-        )
-    )
+    words = f"Ordinates from {_cited(group)}; areas by trapezia between the zeros."
+    yield Paragraph((words,), leads=True)
+    places = result_of(solution, areas.positive).decimals or DECIMALS["area"]
     title = f"{effect.kind} at {effect.at}"
-    yield Figure(line_figure(calculation.beam, line, title, unit, decimals, calculation.units))
+    yield Figure(
+        line_figure(calculation.beam, line, title, unit, decimals, calculation.units, places)
+    )
     yield step_table(solution, areas.steps)
 
 
 def _cited(group: LineGroup) -> str:
     return f"steps {group.rows[0].step.id} to {group.rows[-1].step.id}"
-
-
-def free_body_of(beam: Beam, equation: Equilibrium) -> FreeBody:
-    """The free body of an equation as it is drawn."""
-    actions: list[Force | Couple] = []
-    for action in equation.actions:
-        symbol = symbol_of(action.unknown)
-        if action.up:
-            actions.append(Force(symbol, action.station, 1 if action.up > 0 else -1))
-        else:
-            turn = action.clockwise
-            actions.append(Couple(symbol, action.station, 1 if turn > 0 else -1))
-    inside = [s for s in beam.stations if equation.start <= s.at <= equation.end]
-    acting = {action.station for action in equation.actions}
-    marks = tuple(
-        Mark(place_name(beam, s.at), s.at, s.release.kind if s.release else "")
-        for s in inside
-        if s.at in acting or s.at in (equation.start, equation.end)
-    )
-    loaded = equation.start < equation.end
-    return FreeBody(equation.start, equation.end, tuple(actions), marks, equation.about, loaded)

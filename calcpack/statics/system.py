@@ -8,7 +8,7 @@ from fractions import Fraction
 from typing import Literal
 
 from calcpack.exact.formula import Symbol
-from calcpack.model.beam import Beam, Face, Station
+from calcpack.model.beam import Beam, Face, Release, Station
 from calcpack.model.request import Effect, EffectKind
 
 LETTERS = {"reaction": "R", "moment reaction": "C", "shear": "V", "moment": "M"}
@@ -163,12 +163,23 @@ def _release_actions(
             [Action(left, 1, 0, -1), *held, Action(right, -1, 0, 1)],
             [Action(right, 1, 0, -1)],
         )
+    passed = _passed(beam, station, release)
     if release.kind == "hinge":
-        passed = _effect(beam, "shear", release.name, station.at)
         end, beginning = Action(passed, -1, 0, 1), Action(passed, 1, 0, -1)
     else:
-        passed = _effect(beam, "moment", release.name, station.at)
         end, beginning = Action(passed, 0, -1, 1), Action(passed, 0, 1, -1)
     held_left = held if support is not None and support.face == "left" else []
     held_right = held if support is not None and support.face == "right" else []
     return [*held_left, end], [], [beginning, *held_right]
+
+
+def _passed(beam: Beam, station: Station, release: Release) -> Effect:
+    """What a release passes; where the support there makes two values, the one on its far side."""
+    kind: EffectKind = "shear" if release.kind == "hinge" else "moment"
+    support = station.support
+    if support is not None and support.face is not None:
+        two = support.holds_vertical if kind == "shear" else support.holds_rotation
+        if two:
+            far: Face = "right" if support.face == "left" else "left"
+            return _effect(beam, kind, station.name, station.at, far)
+    return _effect(beam, kind, release.name, station.at)

@@ -106,7 +106,10 @@ def test_what_is_asked_for(kind: str, at: str, side: str, expected: list[str]) -
         (asked('["shear", "rotation"]', "1"),
          "[0].kind[1]: rotation, not computed by this release"),
         (asked('["shear", "shear"]', "1"), "[0].kind[1]: shear, must be stated once"),
-        (asked('"shear"', "1", 'show = "plan"'), "[0].show: plan, not computed by this release"),
+        (
+            asked('"shear"', "1", 'show = "sketch"'),
+            "[0].show: sketch, must be one of 'every equation', 'plan', 'table'",
+        ),
         (asked('"shear"', "1", 'side = "up"'), '[0].side: up, must be "left" or "right"'),
         (asked('"reaction"', '"s"'),
          "[0].at: s, must be a support that holds vertically, for a reaction"),
@@ -224,3 +227,9 @@ def test_effects_of_spans_with_tenths_by_default() -> None:
     # 31 tenths: a moment each, a shear each, and one shear more at each of L, M and N
     assert len(effects) == 4 + 2 + 2 * 31 + 3
     assert len(set(effects)) == len(effects)
+
+
+def test_how_much_of_a_derivation_is_shown() -> None:
+    found = read((BEAM + asked('"shear"', "1", 'show = "table"')).encode()).effects
+    assert [effect.show for effect in found] == ["table"]
+    assert read((BEAM + asked('"shear"', "1")).encode()).effects[0].show is None

@@ -37,7 +37,11 @@ TOP = [
     ('mark = "A", ', "", "cover.revisions[0].mark: absent, must be given"),
     ('"For review"', '"Final"', 'package.status: Final, must be "For review" or "Issued"'),
     ('paper = "letter"', 'paper = "A3"', 'package.paper: A3, must be "letter" or "A4"'),
-    ('detail = "every equation"', 'detail = "plan"', f"package.detail: plan, {LATER}"),
+    (
+        'detail = "every equation"',
+        'detail = "sketch"',
+        "package.detail: sketch, must be one of 'every equation', 'plan', 'table'",
+    ),
     ("open = false", 'open = "no"', "assumptions[0].open: no, must be true or false"),
     (
         "[package]\n",

@@ -103,9 +103,7 @@ def test_what_moves_is_named(name: str) -> None:
         assert phrase in problem.said
     given = [f"{one.name} ({one.kind})" for one in beam.supports]
     given += [f"{one.name} ({one.kind})" for one in beam.releases]
-    assert all(words in problem.said for words in given)
-    still = {"A", "B", "C"} - {one.name for one in beam.supports}
-    assert not any(f"{name} (" in problem.said for name in still)
+    assert all(one in problem.said for one in given)
 
 
 def test_parts_that_stay_are_not_named() -> None:

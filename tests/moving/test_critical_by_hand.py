@@ -1,0 +1,253 @@
+"""Governing positions worked out by hand."""
+
+from __future__ import annotations
+
+from fractions import Fraction
+from typing import Literal
+
+import pytest
+from beams import make_beam
+from making import broken, line_of, make_load
+
+from calcpack.exact.piecewise import Piecewise, Side
+from calcpack.model.loads import Heading
+from calcpack.moving.critical import Governing, governing
+from calcpack.moving.placement import Position, axle_shares, axle_stations, rate
+
+SENSES: tuple[Literal[1, -1], ...] = (1, -1)
+SIDES: tuple[Side, ...] = ("left", "right")
+SPAN = make_beam(10, [(0, "pin"), (10, "roller")], sections=[5])
+MIDSPAN = line_of(SPAN, "moment", "1")
+"""A tent of 5/2 over midspan."""
+
+SLIDE = make_beam(10, [(0, "fixed"), (10, "roller")], [(4, "slide")], [7])
+DROP = line_of(SLIDE, "shear", "1")
+"""0 up to the slide at 4, -1 from there to the cut at 7, 0 beyond: two jumps, 3 apart."""
+
+
+def exact(*values: int | str) -> tuple[Fraction, ...]:
+    return tuple(Fraction(value) for value in values)
+
+
+def lead(at: int, heading: Heading = "right") -> tuple[Heading, Fraction]:
+    return heading, Fraction(at)
+
+
+def where(found: Governing) -> tuple[Heading, Fraction]:
+    assert found.chosen is not None
+    return found.chosen.position.heading, found.chosen.position.lead_at
+
+
+def test_the_line_with_two_jumps() -> None:
+    assert broken((0, 0), (4, 0), (4, -1), (7, -1), (7, 0), (10, 0)) == DROP
+
+
+def test_all_axles_stand_on_one_side_of_coinciding_jumps() -> None:
+    """Two axles as far apart as the jumps: one counts, whichever side the train stands on; each
+    axle on its own better side would double that."""
+    found = governing(DROP, make_load((6, 0), (10, 3)), -1)
+    assert found.value == -10
+    (share,) = [one for one in found.shares if one.ordinate]
+    assert (share.weight, share.ordinate) == exact(10, -1)
+    assert governing(DROP, make_load((6, 0), (10, "2.999")), -1).value == -16
+    assert governing(DROP, make_load((6, 0), (10, "3.001")), -1).value == -10
+    assert governing(DROP, make_load((6, 0), (10, 3)), 1).value == 0
+
+
+def test_axles_at_one_place_take_one_side() -> None:
+    """Spacing 0 at the jump of a shear line from -1/2 to +1/2."""
+    found = governing(line_of(SPAN, "shear", "1"), make_load((4, 0), (6, 0)), 1)
+    assert found.value == 5
+    assert {one.ordinate for one in found.shares} == {Fraction(1, 2)}
+    assert found.chosen is not None
+    assert found.chosen.position.side == "right"
+
+
+def test_a_single_axle() -> None:
+    found = governing(MIDSPAN, make_load((12, 0), headings=("right",)), 1)
+    assert found.value == 30
+    assert where(found) == lead(5)
+    assert found.candidates == 3
+    assert found.rates == exact(6, -6)
+    assert [one.axles_effect for one in found.near] == [0, 0]
+    assert [one.position.lead_at for one in found.near] == [0, 10]
+    least = governing(MIDSPAN, make_load((12, 0)), -1)
+    assert least.value == 0
+    assert least.chosen is None
+
+
+def test_an_axle_over_the_peak_and_one_behind() -> None:
+    """Heading right 12 over midspan and 6 three behind at 1: 30 + 6 = 36; heading left the same
+    mirrored. With 6 over midspan: 15 + 12 = 27."""
+    found = governing(MIDSPAN, make_load((12, 0), (6, 3)), 1)
+    assert found.value == 36
+    assert where(found) == lead(5)
+    assert found.ties == (Position("left", Fraction(5), "left"),)
+    assert found.near[0].axles_effect == 27
+    assert found.near[0].axle == 1
+    assert found.near[0].breakpoint == 5
+    assert found.near[0].position.lead_at == 8
+    assert [one.at for one in found.shares] == [5, 2]
+    assert [one.ordinate for one in found.shares] == [Fraction(5, 2), 1]
+    assert found.rates == exact(9, -3)
+
+
+def test_equal_axles_tie_while_they_straddle_the_peak() -> None:
+    """Two axles of 8 two apart: 20 + 12 wherever they straddle midspan."""
+    found = governing(MIDSPAN, make_load((8, 0), (8, 2)), 1)
+    assert found.value == 32
+    assert where(found) == lead(5)
+    ties = [(one.heading, one.lead_at) for one in found.ties]
+    assert ties == [lead(7), lead(3, "left"), lead(5, "left")]
+    assert found.rates == exact(8, 0)
+    assert found.candidates == 12
+
+
+@pytest.mark.parametrize(("heading", "value", "at"), [("right", "18.1", 10), ("left", "17.6", 7)])
+def test_the_heading_decides(heading: Heading, value: str, at: int) -> None:
+    """Reaction at B, 1 there and x/10 elsewhere, under 10, 2 one behind and 9 two more behind: the
+    foremost at B gives 10 + 2 x 0.9 + 9 x 0.7, heading left the last there 9 + 2 x 0.8 + 10 x 0.7.
+    """
+    load = make_load((10, 0), (2, 1), (9, 2), headings=(heading,))
+    found = governing(line_of(SPAN, "reaction", "B"), load, 1)
+    assert found.value == Fraction(value)
+    assert where(found) == lead(at, heading)
+
+
+def test_wheels_partly_on_the_beam() -> None:
+    """Ten each, eight apart: one at midspan and the other off the beam gives 25, both on it 10."""
+    found = governing(MIDSPAN, make_load((10, 0), (10, 8)), 1)
+    assert found.value == 25
+    assert sorted(one.standing for one in found.shares) == ["counts", "off the beam"]
+    off = next(one for one in found.shares if one.standing == "off the beam")
+    assert (off.ordinate, off.effect) == exact(0, 0)
+
+
+def test_a_train_longer_than_the_beam() -> None:
+    """Twelve apart on a span of ten: never more than one axle, so the heaviest at midspan."""
+    found = governing(MIDSPAN, make_load((5, 0), (7, 12), (6, 12)), 1)
+    assert found.value == Fraction(35, 2)
+    assert [one.standing for one in found.shares] == ["off the beam", "counts", "off the beam"]
+    assert where(found)[1] in (17, -7)
+
+
+def test_an_axle_at_the_very_end_counts() -> None:
+    """The shear at a wall is 1 for a load anywhere: two axles as far apart as the beam is long both
+    count at its two ends, and no longer if they are a hair farther apart."""
+    wall = line_of(make_beam(6, [(0, "fixed")]), "shear", "A")
+    assert governing(wall, make_load((3, 0), (4, 6)), 1).value == 7
+    assert governing(wall, make_load((3, 0), (4, "6.000001")), 1).value == 4
+    tip = line_of(make_beam(6, [(0, "fixed")]), "moment", "A")
+    found = governing(tip, make_load((3, 0), (4, 2)), -1)
+    assert found.value == -(4 * 6 + 3 * 4)
+    assert {one.at for one in found.shares} == {6, 4}
+
+
+def test_an_axle_just_off_the_end_does_not_relieve() -> None:
+    """An overhang relieves midspan; at the event where an axle stands at its tip the train may
+    stand just beyond, and then only the other counts: 10 x 3 at midspan."""
+    beam = make_beam(16, [(0, "pin"), (12, "roller")], sections=[6])
+    line = line_of(beam, "moment", "1")
+    assert line == broken((0, 0), (6, 3), (12, 0), (16, -2))
+    found = governing(line, make_load((4, 0), (10, 10), headings=("right",)), 1)
+    assert found.value == 30
+    assert found.chosen is not None
+    assert not found.chosen.position.ends_count
+    assert [one.standing for one in found.shares] == ["off the beam", "counts"]
+    assert found.near[0].axles_effect < 30
+
+
+def test_neglected_axles_keep_their_place() -> None:
+    """Both axles of 10 eight apart: one at midspan (5/2), the other on an overhang (-3/2)."""
+    beam = make_beam(18, [(4, "pin"), (14, "roller")], sections=[9])
+    line = line_of(beam, "moment", "1")
+    counted = governing(line, make_load((10, 0), (10, 8)), 1)
+    assert counted.value == 20  # it waits until the other is off the beam or on a support
+    neglected = governing(line, make_load((10, 0), (10, 8), relieving="neglect"), 1)
+    assert neglected.value == 25
+    other = next(one for one in neglected.shares if one.standing == "neglected")
+    assert (other.ordinate, other.effect) == exact("-3/2", 0)
+    assert neglected.rates == exact(5, -5)
+
+
+def test_zero_ordinates_everywhere() -> None:
+    """At a hinge there is no moment: nothing governs, under axles and uniform load alike."""
+    beam = make_beam(12, [(0, "pin"), (6, "roller"), (12, "roller")], [(8, "hinge")])
+    line = line_of(beam, "moment", "r1")
+    assert line == broken((0, 0), (12, 0))
+    for sense in SENSES:
+        found = governing(line, make_load((10, 0), (10, 8), uniform=2), sense)
+        assert found.value == found.area == 0
+        assert found.chosen is found.rates is None
+        assert found.loaded == found.shares == found.ties == found.near == ()
+
+
+def test_uniform_load_stands_where_it_helps() -> None:
+    """Simple span of 8 with an overhang of 4, reaction at A: area 4 and -1; the allowance raises
+    the axles only, the share takes of both."""
+    line = line_of(make_beam(12, [(0, "pin"), (8, "roller")]), "reaction", "A")
+    load = make_load((10, 0), uniform=3, allowance="0.3", distribution="0.5")
+    most, least = governing(line, load, 1), governing(line, load, -1)
+    assert (most.area, most.uniform) == exact(4, 12)
+    assert most.loaded == (exact(0, 8),)
+    assert most.value == (10 * Fraction(13, 10) + 12) / 2
+    assert most.static == 22
+    assert (least.area, least.uniform) == exact(-1, -3)
+    assert least.loaded == (exact(8, 12),)
+    assert least.value == (-5 * Fraction(13, 10) - 3) / 2
+
+
+def test_loaded_stretches_are_joined() -> None:
+    """A line that rises and falls above the axis is loaded in one stretch."""
+    found = governing(MIDSPAN, make_load(uniform=2), 1)
+    assert found.loaded == (exact(0, 10),)
+    assert found.value == 50
+    assert found.candidates == 0
+    apart = broken((0, 1), (2, -1), (4, 1), (6, 0), (8, 0), (9, 1))
+    assert governing(apart, make_load(uniform=1), 1).loaded == (
+        exact(0, 1),
+        exact(3, 6),
+        exact(8, 9),
+    )
+
+
+def test_stations_and_standings_at_one_position() -> None:
+    load = make_load((3, 0), (4, 4), (5, 7))
+    assert axle_stations(load, "right", Fraction(10)) == exact(10, 6, -1)
+    assert axle_stations(load, "left", Fraction(0)) == exact(0, 4, 11)
+    line = broken((0, 1), (4, 2), (4, -2), (10, 1))
+    ordinates = {}
+    for side in SIDES:
+        for ends in (True, False):
+            position = Position("left", Fraction(0), side, ends)
+            shares = axle_shares(line, load, position, 1)
+            ordinates[side, ends] = [one.ordinate for one in shares]
+            assert shares[2].standing == "off the beam"
+    assert ordinates["left", True] == [1, 2, 0]
+    assert ordinates["right", True] == [1, -2, 0]
+    assert ordinates["left", False] == [0, 2, 0]
+    assert ordinates["right", False] == [1, -2, 0]
+
+
+def test_rates_on_either_side() -> None:
+    """Slopes of 1/4 left of 4 and 1/2 right of it; an axle at the far end counts to the left only;
+    one that begins to relieve there counts, where such are neglected, on one side."""
+    line = broken((0, 1), (4, 2), (4, -2), (8, 0), (10, 1))
+    load = make_load((3, 0), (4, 6), headings=("right",))
+    at = Position("right", Fraction(10), "left")
+    assert rate(line, load, at, 1, "left") == 3 * Fraction(1, 2) + 4 * Fraction(1, 4)
+    assert rate(line, load, at, 1, "right") == 4 * Fraction(1, 2)
+    keen = make_load((3, 0), (4, 2), relieving="neglect")
+    start = Position("right", Fraction(10), "left")
+    assert rate(line, keen, start, 1, "left") == 3 * Fraction(1, 2)
+    assert rate(line, keen, start, -1, "left") == 4 * Fraction(1, 2)
+    before = Position("right", Fraction(8), "right")
+    assert rate(line, keen, before, 1, "right") == 3 * Fraction(1, 2)
+    assert rate(line, keen, before, 1, "left") == 0
+    assert rate(line, keen, before, -1, "left") == 7 * Fraction(1, 2)
+
+
+def test_curved_lines_are_refused() -> None:
+    curved = Piecewise.from_pieces([(0, 4, (0, 0, 1))])
+    with pytest.raises(ValueError, match="straight"):
+        governing(curved, make_load((1, 0)), 1)
