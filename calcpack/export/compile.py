@@ -9,6 +9,7 @@ from datetime import UTC, date, datetime
 import typst
 
 from calcpack.errors import OutputFailed
+from calcpack.export.attachments import Attachment
 from calcpack.export.templates import template_folder
 from calcpack.render.typst import literal, to_typst
 from calcpack.results import DIGEST_SHOWN, program_version
@@ -19,7 +20,13 @@ from calcpack.solution import Solution
 PAPERS = {"letter": "us-letter", "A4": "a4"}
 
 
-def to_pdf(parts: Sequence[Sheet | Block], solution: Solution, digest: str, day: date) -> bytes:
+def to_pdf(
+    parts: Sequence[Sheet | Block],
+    solution: Solution,
+    digest: str,
+    day: date,
+    attached: Sequence[Attachment] = (),
+) -> bytes:
     """Typeset the sheets and what stands between them.
 
     Args:
@@ -27,6 +34,7 @@ def to_pdf(parts: Sequence[Sheet | Block], solution: Solution, digest: str, day:
         solution: whose cover gives head and foot.
         digest: of data and results; its first 12 digits stand in every foot.
         day: the date of the document, from calc.toml and never from the clock.
+        attached: files to carry inside.
 
     Raises:
         OutputFailed: the typesetter refused; its message is carried along.
@@ -36,11 +44,13 @@ def to_pdf(parts: Sequence[Sheet | Block], solution: Solution, digest: str, day:
         [
             '#import "package.typ": *',
             f"#show: calc-package.with({_head(solution, digest, day)})",
+            *(_attach(file) for file in attached),
             body.text,
         ]
     )
     layout = (template_folder() / "package.typ").read_bytes()
-    files = {"main.typ": main.encode(), "package.typ": layout, **body.files}
+    inside = {file.name: file.content for file in attached}
+    files = {"main.typ": main.encode(), "package.typ": layout, **inside, **body.files}
     midnight = datetime(day.year, day.month, day.day, tzinfo=UTC)
     with tempfile.TemporaryDirectory() as empty:
         try:
@@ -56,6 +66,15 @@ def to_pdf(parts: Sequence[Sheet | Block], solution: Solution, digest: str, day:
             raise OutputFailed(f"the typesetter stopped: {error}") from error
     assert isinstance(found, bytes)
     return found
+
+
+def _attach(file: Attachment) -> str:
+    name = literal(file.name)
+    return (
+        f"#pdf.attach({name}, read({name}, encoding: none), "
+        f"relationship: {literal(file.relationship)}, mime-type: {literal(file.mime)}, "
+        f"description: {literal(file.description)})"
+    )
 
 
 def _head(solution: Solution, digest: str, day: date) -> str:

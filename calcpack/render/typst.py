@@ -29,6 +29,7 @@ from calcpack.sheets.blocks import (
     Text,
     Value,
 )
+from calcpack.sheets.lettering import has_glyph
 
 LONGEST_WORD = 16
 """A longer word may be broken, after so many characters a piece."""
@@ -93,7 +94,7 @@ class _Writer:
             case Contents(revision):
                 yield f"#calc-contents({literal(revision)})"
             case Preformatted(text):
-                yield f"#calc-preformatted({literal(text)})"
+                yield f"#calc-preformatted({literal(printable(text))})"
 
     def _table(self, table: Table) -> Iterator[str]:
         widths = ", ".join(f"{c.width}fr" if c.width else "auto" for c in table.columns)
@@ -142,6 +143,17 @@ def to_typst(parts: Sequence[Sheet | Block], derivation: Derivation) -> Source:
         for block in part.blocks if isinstance(part, Sheet) else (part,):
             lines.extend(writer.block(block))
     return Source("\n".join(lines), writer.files)
+
+
+def printable(text: str) -> str:
+    """The text with each character that no font has written as its code point.
+
+    >>> printable("a\u4e2d")
+    'a⟨U+4E2D⟩'
+    """
+    return "".join(
+        one if one in "\n\t" or has_glyph(one) else f"⟨U+{ord(one):04X}⟩" for one in text
+    )
 
 
 def breakable(text: str) -> str:

@@ -47,6 +47,15 @@ def _advances(slanted: bool) -> Mapping[int, float]:
         return {code: widths[glyph][0] / em for code, glyph in font.getBestCmap().items()}
 
 
+def has_glyph(character: str) -> bool:
+    """Whether the font of the figures, on which the text falls back too, has the character.
+
+    >>> has_glyph("Ω"), has_glyph("\u4e2d")
+    (True, False)
+    """
+    return ord(character) in _advances(slanted=False)
+
+
 @dataclass(frozen=True)
 class Run:
     """Characters of one style; ``slanted`` for symbols, ``lowered`` for subscripts."""

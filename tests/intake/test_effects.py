@@ -108,7 +108,7 @@ def test_what_is_asked_for(kind: str, at: str, side: str, expected: list[str]) -
         (asked('["shear", "shear"]', "1"), "[0].kind[1]: shear, must be stated once"),
         (
             asked('"shear"', "1", 'show = "sketch"'),
-            "[0].show: sketch, must be one of 'every equation', 'plan', 'table'",
+            "[0].show: sketch, must be \"every equation\", \"plan\" or \"table\"",
         ),
         (asked('"shear"', "1", 'side = "up"'), '[0].side: up, must be "left" or "right"'),
         (asked('"reaction"', '"s"'),

@@ -40,7 +40,7 @@ TOP = [
     (
         'detail = "every equation"',
         'detail = "sketch"',
-        "package.detail: sketch, must be one of 'every equation', 'plan', 'table'",
+        'package.detail: sketch, must be "every equation", "plan" or "table"',
     ),
     ("open = false", 'open = "no"', "assumptions[0].open: no, must be true or false"),
     (

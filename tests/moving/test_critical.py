@@ -161,7 +161,7 @@ def test_ties_and_near_candidates_are_what_they_say() -> None:
     ties = near = 0
     for _, line, _, load, best in every(SEEDS):
         if best.chosen is None:
-            assert best.ties == best.near == best.shares == ()
+            assert not any((best.ties, best.near, best.shares))
             continue
         for position in best.ties:
             assert effect_at(line, load, position, best.sense) == best.axles
