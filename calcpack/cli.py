@@ -1,4 +1,4 @@
-"""The command line: ``calcpack solve`` and ``calcpack issue``."""
+"""The command line: ``calcpack new``, ``solve`` and ``issue``."""
 
 from __future__ import annotations
 
@@ -42,6 +42,10 @@ def _parser() -> argparse.ArgumentParser:
         prog="calcpack", description="Checkable calculation packages for beams under moving loads."
     )
     commands = parser.add_subparsers(required=True, metavar="COMMAND")
+    new = commands.add_parser("new", help="make the folder of a new calculation")
+    new.add_argument("folder", type=Path, metavar="FOLDER")
+    new.add_argument("--like", metavar="EXAMPLE", help="begin from the example of that name")
+    new.set_defaults(run=_new)
     solve = commands.add_parser("solve", help="compute a calc.toml and print what was found")
     solve.add_argument("calculation", type=Path, metavar="CALC.toml")
     solve.add_argument("--json", action="store_true", help="print results.json")
@@ -51,6 +55,14 @@ def _parser() -> argparse.ArgumentParser:
     issue.add_argument("--out", type=Path, metavar="PDF", help="default: FOLDER/package.pdf")
     issue.set_defaults(run=_issue)
     return parser
+
+
+def _new(chosen: argparse.Namespace) -> None:
+    from datetime import date
+
+    from calcpack.export.new import new_folder
+
+    new_folder(chosen.folder, chosen.like, date.today())
 
 
 def _solve(chosen: argparse.Namespace) -> None:

@@ -61,7 +61,11 @@ REFUSED: list[tuple[str, Change, list[str]]] = [
     ("nan", swap("length = 10.0", "length = nan"), ["beam.length: nan"]),
     ("inf", swap("length = 10.0", "length = inf"), ["beam.length: inf"]),
     ("1e400", swap("length = 10.0", "length = 1e400"), ["beam.length: 1e400"]),
-    ("misspelt key", swap("length = 10.0", "lenght = 10.0"), ["beam.length: absent", "beam.lenght: 10.0"]),
+    (
+        "misspelt key",
+        swap("length = 10.0", "lenght = 10.0"),
+        ["beam.length: absent", "beam.lenght: 10.0"],
+    ),
     ("two supports in one place", swap("at = 8.0", "at = 0.0"), ["beam.supports[1].at: 0.0"]),
     (
         "no vertical support",
@@ -197,6 +201,25 @@ def test_a_character_without_a_glyph_is_refused_at_its_field(
     (tmp_path / "calc.toml").write_text(swap('"Cart"', '"\u4e2d"')(GOOD), encoding="utf-8")
     assert main(["issue", str(tmp_path)]) == 2
     assert capsys.readouterr().err.startswith("moving[0].name: \u4e2d, must do without U+4E2D")
+
+
+@pytest.mark.parametrize("like", [None, "crane_runway", "drop_in_girder", "service_trestle"])
+def test_a_new_folder_can_be_solved(like: str | None, tmp_path: Path) -> None:
+    folder = tmp_path / "deep" / "new"
+    assert main(["new", str(folder), *(["--like", like] if like else [])]) == 0
+    assert sorted(path.name for path in folder.iterdir()) == ["calc.toml", "calculation.ipynb"]
+    assert list(folder.parent.iterdir()) == [folder]
+    assert main(["solve", str(folder / "calc.toml")]) == 0
+
+
+def test_new_overwrites_nothing(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    (tmp_path / "calc.toml").write_text("mine")
+    assert main(["new", str(tmp_path), "--like", "nothing"]) == 2
+    lines = capsys.readouterr().err.splitlines()
+    assert lines[0] == f"{tmp_path}: exists, must be new or an empty folder"
+    assert lines[1].startswith("--like: nothing, must be one of crane_runway, ")
+    assert (tmp_path / "calc.toml").read_text() == "mine"
+    assert [path.name for path in tmp_path.iterdir()] == ["calc.toml"]
 
 
 def test_the_module_runs(tmp_path: Path) -> None:
