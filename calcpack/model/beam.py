@@ -12,7 +12,7 @@ from typing import Literal
 TAG_LENGTH = 12
 """The longest name that stands in symbols as it is."""
 
-SupportKind = Literal["pin", "roller", "fixed", "guided"]
+SupportKind = Literal["pin", "roller", "fixed", "guided", "spring"]
 ReleaseKind = Literal["hinge", "slide"]
 Face = Literal["left", "right"]
 
@@ -51,21 +51,27 @@ Source = Typed | Datum | Beyond | Tenth
 
 @dataclass(frozen=True)
 class Support:
-    """A support; ``face`` is the side of a release at the same station that it holds, else None."""
+    """A support; ``face`` is the side of a release at the same station that it holds, else None.
+
+    A spring yields: ``vertical`` is its stiffness in force per length, ``rotational`` in moment
+    per radian, each 0 where it holds nothing of that kind. Other supports do not yield.
+    """
 
     name: str
     at: Fraction
     kind: SupportKind
     source: Source
     face: Face | None = None
+    vertical: Fraction = Fraction(0)
+    rotational: Fraction = Fraction(0)
 
     @property
     def holds_vertical(self) -> bool:
-        return self.kind != "guided"
+        return self.kind in ("pin", "roller", "fixed") or self.vertical > 0
 
     @property
     def holds_rotation(self) -> bool:
-        return self.kind in ("fixed", "guided")
+        return self.kind in ("fixed", "guided") or self.rotational > 0
 
 
 @dataclass(frozen=True)
@@ -88,6 +94,21 @@ class Section:
 
 
 @dataclass(frozen=True)
+class Stretch:
+    """A stretch of the beam with one bending stiffness ``EI`` (force x length squared, > 0).
+
+    ``source`` is that of its start; ``path`` says where its stiffness stands in calc.toml, whose
+    key ``EI``, or keys ``E`` and ``I`` in units of their own, the inputs then hold.
+    """
+
+    start: Fraction
+    end: Fraction
+    EI: Fraction
+    source: Source
+    path: str
+
+
+@dataclass(frozen=True)
 class Station:
     """All that stands at one place of the beam; ``name`` is what a sheet calls it."""
 
@@ -103,6 +124,7 @@ class Beam:
     """A straight beam from station 0 to ``length``; supports, releases and sections in order.
 
     Stations are in the calculation's unit of length. ``end`` says where the length comes from.
+    ``stiffness`` covers the beam in order without gaps; empty: uniform and unknown.
 
     >>> Beam(Fraction(10), (Support("A", Fraction(0), "fixed", Typed("beam.supports[0].at")),),
     ...      (), (), Typed("beam.length")).station("A").at
@@ -114,10 +136,11 @@ class Beam:
     releases: tuple[Release, ...]
     sections: tuple[Section, ...]
     end: Source
+    stiffness: tuple[Stretch, ...] = ()
 
     @cached_property
     def stations(self) -> tuple[Station, ...]:
-        """The key stations in order: ends, supports, releases, sections; one per place.
+        """The key stations in order: ends, supports, releases, sections, EI steps; one per place.
 
         A place is called after its support, else its release, else its section.
         """
@@ -145,6 +168,8 @@ class Beam:
             yield release.at, release.name, release.source, None, release
         for section in self.sections:
             yield section.at, section.name, section.source, None, None
+        for stretch in self.stiffness:
+            yield stretch.start, "", stretch.source, None, None
         yield Fraction(0), "", Datum(), None, None
         yield self.length, "", self.end, None, None
 

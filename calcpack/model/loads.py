@@ -1,4 +1,4 @@
-"""Loads that travel along the beam."""
+"""Loads that travel along the beam, and what acts always."""
 
 from __future__ import annotations
 
@@ -55,3 +55,27 @@ class MovingLoad:
             behind += axle.spacing
             distances.append(behind)
         return tuple(distances)
+
+
+@dataclass(frozen=True)
+class Settlement:
+    """A support that gives way: ``down`` in units of deflection (downward +), or ``turn`` in rad.
+
+    ``turn`` is clockwise +, for a support that holds rotation; one of the two is zero. ``path`` is
+    where it stands in calc.toml.
+    """
+
+    at: str
+    station: Fraction
+    down: Fraction
+    turn: Fraction
+    path: str
+
+
+@dataclass(frozen=True)
+class Permanent:
+    """A permanent load case; for now of settlements only."""
+
+    name: str
+    settlements: tuple[Settlement, ...]
+    path: str

@@ -9,9 +9,9 @@ from fractions import Fraction
 from typing import Any, Literal
 
 from calcpack.model.beam import Beam, Face
-from calcpack.model.loads import MovingLoad
+from calcpack.model.loads import MovingLoad, Permanent
 
-EffectKind = Literal["reaction", "moment reaction", "shear", "moment"]
+EffectKind = Literal["reaction", "moment reaction", "shear", "moment", "deflection", "rotation"]
 Detail = Literal["every equation", "plan", "table"]
 Paper = Literal["letter", "A4"]
 Status = Literal["For review", "Issued"]
@@ -23,7 +23,8 @@ class Effect:
 
     Attributes:
         kind: reaction (upward +), moment reaction (anticlockwise on the beam +), shear (+ when
-            the outside forces left of the cut push up) or moment (sagging +).
+            the outside forces left of the cut push up), moment (sagging +), deflection (downward
+            +) or rotation (clockwise +).
         at: name of the place, or its station as text where it has none.
         station: where it is.
         face: the side of the place at which the beam is cut, where two values exist; else None.
@@ -119,7 +120,7 @@ class Calculation:
 
     ``plain`` is the file as plain JSON data without ``cover`` (for the digest); ``inputs`` gives
     the exact value of every number a formula may cite, by its path; ``echo`` lists every value;
-    ``text`` is the file as typed.
+    ``text`` is the file as typed; ``redundants`` are None where they are chosen by rule.
     """
 
     units: str
@@ -133,3 +134,5 @@ class Calculation:
     inputs: Mapping[str, Fraction]
     echo: tuple[Entry, ...]
     text: str = ""
+    redundants: tuple[Effect, ...] | None = None
+    permanent: tuple[Permanent, ...] = ()

@@ -71,6 +71,18 @@ class Equation:
                 total = total + lines[term.quantity] * term.coefficient
         return total / -self.term(quantity).coefficient
 
+    def number_for(self, quantity: Effect, values: Mapping[Effect, Fraction]) -> Fraction:
+        """The value of one quantity from the values of all others, no load on the body."""
+        total = sum(
+            (
+                values[term.quantity] * term.coefficient
+                for term in self.terms
+                if term.quantity != quantity
+            ),
+            Fraction(0),
+        )
+        return -total / self.term(quantity).coefficient
+
 
 def sum_of_forces(start: Fraction, end: Fraction, name: str, actions: Iterable[Action]) -> Equation:
     """Vertical forces on the free body, up +."""

@@ -24,9 +24,14 @@ class Cut:
     equation: Equation
 
 
-def unknown_lines(beam: Beam, plan: Sequence[PlanStep]) -> dict[Effect, Piecewise]:
-    """The influence line of every unknown, by the plan's equations in their order."""
-    lines: dict[Effect, Piecewise] = {}
+def unknown_lines(
+    beam: Beam, plan: Sequence[PlanStep], redundants: Mapping[Effect, Piecewise] | None = None
+) -> dict[Effect, Piecewise]:
+    """The influence line of every unknown, by the plan's equations in their order.
+
+    The lines of redundants, where there are any, must be given; they stand among the result.
+    """
+    lines: dict[Effect, Piecewise] = dict(redundants or {})
     for step in plan:
         lines[step.unknown] = step.equation.solved_for(step.unknown, lines, beam.length)
     return lines
@@ -78,11 +83,10 @@ def _body_cut(beam: Beam, system: System, effect: Effect) -> tuple[Body, bool]:
     if len(touching) == 1:
         return touching[0], after_support
     support = beam.station(at).support
-    if support is None:
-        return touching[0], True
-    if support.face is not None:
+    if support is not None and support.face is not None:
         return touching[0 if support.face == "left" else 1], after_support
-    return touching[1 if effect.face == "right" else 0], after_support
+    on_right = effect.face == "right"
+    return touching[1 if on_right else 0], after_support or (support is None and not on_right)
 
 
 def _is_left(action: Action, at: Fraction, after_support: bool) -> bool:

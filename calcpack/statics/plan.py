@@ -56,17 +56,18 @@ class _Run:
 def plan_of_solution(beam: Beam, system: System) -> tuple[PlanStep, ...]:
     """Settle an order in which each equation holds a single unknown not yet found.
 
-    Free bodies are runs of neighbouring bodies. Of the equations with a single unknown not yet
-    found, one on the free body with the fewest forces is taken; there the sum of forces goes
-    before moments, and moments with fewer terms go first. In a determinate chain some body always
-    offers such an equation: n bodies carry n + 1 unknowns of supports and n - 1 of releases, so
-    one body has no more unknowns than equations, and what remains are determinate chains again.
+    Redundants count as found. Free bodies are runs of neighbouring bodies. Of the equations with a
+    single unknown not yet found, one on the free body with the fewest forces is taken; there the
+    sum of forces goes before moments, and moments with fewer terms go first. In a determinate
+    chain some body always offers such an equation: n bodies carry n + 1 unknowns of supports and
+    n - 1 of releases, so one body has no more unknowns than equations, and what remains are
+    determinate chains again.
 
     Raises:
         ProgramFault: no such equation was found on a determinate beam.
     """
     runs = _runs_by_forces(system)
-    found: set[Effect] = set()
+    found = set(system.redundants)
     steps: list[PlanStep] = []
     while len(found) < len(system.unknowns):
         runs = [run for run in runs if any(one.unknown not in found for one in run.actions)]
@@ -113,8 +114,9 @@ def _steps(beam: Beam, runs: Iterable[_Run], found: set[Effect]) -> Iterator[Pla
 
 def _equations(run: _Run) -> Iterator[Equation]:
     start, end = run.bodies[0].start, run.bodies[-1].end
-    yield sum_of_forces(start, end, run.name, run.actions)
-    if start < end:
+    if any(action.up for action in run.actions):
+        yield sum_of_forces(start, end, run.name, run.actions)
+    if start < end or any(action.clockwise for action in run.actions):
         for about in sorted({start, end, *(one.station for one in run.actions)}):
             yield sum_of_moments(start, end, run.name, run.actions, about)
 

@@ -53,22 +53,26 @@ def classify(beam: Beam, system: System) -> Classification:
     return Classification("indeterminate" if degree else "determinate", degree, reason)
 
 
+def is_stable(system: System) -> bool:
+    """Whether the bodies are held with all redundants released."""
+    return not _held_motions(system).null_space
+
+
 def _held_motions(system: System) -> Reduced:
     """One row an unknown, over the motions of the bodies: deflection at the start, then slope."""
-    columns: dict[int, int] = {}
-    size = 0
-    for index, body in enumerate(system.bodies):
-        columns[index] = size
-        size += body.equations
     rows: dict[object, dict[int, Fraction]] = {unknown: {} for unknown in system.unknowns}
-    for index, body in enumerate(system.bodies):
+    size = 0
+    for body in system.bodies:
         for action in body.actions:
-            row, column = rows[action.unknown], columns[index]
+            row = rows[action.unknown]
             if action.up:
-                row[column] = Fraction(action.up)
-            if not body.is_pin:
+                row[size] = Fraction(action.up)
+            if body.turns:
                 turned = action.up * (action.station - body.start) - action.clockwise
-                row[column + 1] = turned
+                row[size + body.shifts] = turned
+        size += body.equations
+    for redundant in system.redundants:
+        del rows[redundant]
     return reduce_rows(list(rows.values()), size)
 
 
@@ -76,7 +80,7 @@ def _in_words(beam: Beam, system: System, motion: Mapping[int, Fraction]) -> str
     phrases, column = [], 0
     for body in system.bodies:
         lift = motion.get(column, Fraction(0))
-        turn = Fraction(0) if body.is_pin else motion.get(column + 1, Fraction(0))
+        turn = motion.get(column + 1, Fraction(0))
         column += body.equations
         if not body.is_pin and (lift or turn):
             phrases.append(f"the part {body.name} {_motion_of(beam, body, lift, turn)}")

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from typing import Literal
@@ -12,7 +12,6 @@ from calcpack.model.beam import Beam, Face, Release, Station
 from calcpack.model.request import Effect, EffectKind
 
 LETTERS = {"reaction": "R", "moment reaction": "C", "shear": "V", "moment": "M"}
-EQUATIONS_OF_BODY = 2
 
 
 def symbol_of(effect: Effect) -> Symbol:
@@ -69,24 +68,40 @@ class Body:
 
     @property
     def name(self) -> str:
-        return f"pin at {self.end_name}" if self.is_pin else f"{self.start_name}-{self.end_name}"
+        if self.is_pin:
+            return f"{'joint' if self.turns else 'pin'} at {self.end_name}"
+        return f"{self.start_name}-{self.end_name}"
 
     @property
     def is_pin(self) -> bool:
         return self.start == self.end
 
     @property
+    def shifts(self) -> bool:
+        """Whether the sum of forces on it says anything."""
+        return not self.is_pin or any(action.up for action in self.actions)
+
+    @property
+    def turns(self) -> bool:
+        """Whether the sum of moments on it says anything: for a pin, where couples act on it."""
+        return not self.is_pin or any(action.clockwise for action in self.actions)
+
+    @property
     def equations(self) -> int:
-        """Equations of equilibrium it offers: forces and moments, for a pin forces only."""
-        return 1 if self.is_pin else EQUATIONS_OF_BODY
+        """Equations of equilibrium that it offers."""
+        return self.shifts + self.turns
 
 
 @dataclass(frozen=True)
 class System:
-    """The bodies from left to right and the unknowns in the order in which they are met."""
+    """The bodies from left to right and the unknowns in the order in which they are met.
+
+    ``redundants`` are those that other equations than equilibrium must find.
+    """
 
     bodies: tuple[Body, ...]
     unknowns: tuple[Effect, ...]
+    redundants: tuple[Effect, ...] = ()
 
 
 def place_name(beam: Beam, at: Fraction) -> str:
@@ -103,8 +118,11 @@ def place_name(beam: Beam, at: Fraction) -> str:
     return str(at)
 
 
-def cut_into_bodies(beam: Beam) -> System:
+def cut_into_bodies(beam: Beam, redundants: Sequence[Effect] = ()) -> System:
     """Cut the beam at every release and name what acts on each piece.
+
+    A moment at a support that is among ``redundants`` opens the beam there, as a hinge would; it
+    then acts on both faces. Other redundants stay in place as forces.
 
     A pin, roller or fixed support pushes with a force, a fixed or guided support holds with a
     couple, a hinge passes a shear, a slide a moment. A hinge over a support that holds no
@@ -115,17 +133,21 @@ def cut_into_bodies(beam: Beam) -> System:
     start = Fraction(0)
     actions: list[Action] = []
     for station in beam.stations:
-        if station.release is None:
+        opened = [r for r in redundants if r.kind == "moment" and r.station == station.at]
+        if opened:
+            on_left, pin, on_right = _opened_actions(beam, station, opened)
+        elif station.release is not None:
+            on_left, pin, on_right = _release_actions(beam, station)
+        else:
             actions += _support_actions(beam, station)
             continue
-        on_left, pin, on_right = _release_actions(beam, station)
         bodies.append(_body(beam, start, station.at, [*actions, *on_left]))
         if pin:
             bodies.append(_body(beam, station.at, station.at, pin))
         start, actions = station.at, on_right
     bodies.append(_body(beam, start, beam.length, actions))
     unknowns = dict.fromkeys(action.unknown for body in bodies for action in body.actions)
-    return System(tuple(bodies), tuple(unknowns))
+    return System(tuple(bodies), tuple(unknowns), tuple(redundants))
 
 
 def _body(beam: Beam, start: Fraction, end: Fraction, actions: list[Action]) -> Body:
@@ -171,6 +193,33 @@ def _release_actions(
     held_left = held if support is not None and support.face == "left" else []
     held_right = held if support is not None and support.face == "right" else []
     return [*held_left, end], [], [beginning, *held_right]
+
+
+def _opened_actions(
+    beam: Beam, station: Station, opened: Sequence[Effect]
+) -> tuple[list[Action], list[Action], list[Action]]:
+    """The same at a support where moments are released, ``opened`` on one face or on both.
+
+    The support stays with the face whose moment is not released; else it has a joint of its own.
+    """
+    held = list(_support_actions(beam, station))
+    faces: tuple[Face, ...] = ("left", "right")
+    only = opened[0].face if len(opened) == 1 else None
+    if only is not None:
+        shear, moment = _effect(beam, "shear", station.name, station.at, only), opened[0]
+        end = [Action(shear, -1, 0, 1), Action(moment, 0, -1, 1)]
+        beginning = [Action(shear, 1, 0, -1), Action(moment, 0, 1, -1)]
+        return (end, [], [*beginning, *held]) if only == "left" else ([*held, *end], [], beginning)
+    left, right = (_effect(beam, "shear", station.name, station.at, face) for face in faces)
+    first, last = opened[0], opened[-1]
+    joint = [Action(left, 1, 0, -1), *held, Action(right, -1, 0, 1)]
+    if first != last:
+        joint += [Action(first, 0, 1, -1), Action(last, 0, -1, 1)]
+    return (
+        [Action(left, -1, 0, 1), Action(first, 0, -1, 1)],
+        joint,
+        [Action(right, 1, 0, -1), Action(last, 0, 1, -1)],
+    )
 
 
 def _passed(beam: Beam, station: Station, release: Release) -> Effect:

@@ -1,0 +1,1 @@
+"""The force method: redundants, flexibilities, and the curves under unit redundants."""
