@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import itertools
 from bisect import bisect_left, bisect_right
-from collections.abc import Callable, Iterable, Sequence
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from typing import Literal
@@ -83,7 +83,7 @@ class Piecewise:
         """The one-sided derivative at x; same rules as ``value``."""
         index = self._index(x, side)
         piece, t = self.pieces[index], x - self.breaks[index]
-        return _evaluated(tuple(k * value for k, value in enumerate(piece))[1:], t)
+        return _evaluated(_derivative(piece), t)
 
     def _index(self, x: Fraction, side: Side) -> int:
         if not self.breaks[0] <= x <= self.breaks[-1]:
@@ -109,25 +109,30 @@ class Piecewise:
     def mapped(self, change: Callable[[Coefficients], Coefficients]) -> Piecewise:
         """The same breakpoints with every piece's coefficients changed."""
         return Piecewise.from_pieces(
-            (start, end, change(piece))
-            for start, end, piece in zip(self.breaks, self.breaks[1:], self.pieces, strict=False)
+            (start, end, change(piece)) for start, end, piece in self._spread()
         )
 
     def zeros(self) -> tuple[Fraction, ...]:
-        """Stations strictly inside a piece where the function changes sign; exact for degree 1.
+        """Stations strictly inside a piece where the function changes sign.
 
-        Raises:
-            ValueError: a piece is of higher degree.
+        Exact for straight pieces; of a curved piece to the nearest multiple of ``GRID``.
         """
-        found = []
-        for start, end, piece in zip(self.breaks, self.breaks[1:], self.pieces, strict=False):
-            if len(piece) > 2:
-                raise ValueError("zeros are exact for straight pieces only")
-            if len(piece) == 2:
-                zero = start - piece[0] / piece[1]
-                if start < zero < end:
-                    found.append(zero)
-        return tuple(found)
+        return tuple(
+            start + root
+            for start, end, piece in self._spread()
+            for root in sign_changes(piece, end - start)
+        )
+
+    def turns(self) -> tuple[Fraction, ...]:
+        """Stations strictly inside a piece where the slope changes sign, found as ``zeros`` are."""
+        return tuple(
+            start + root
+            for start, end, piece in self._spread()
+            for root in sign_changes(_derivative(piece), end - start)
+        )
+
+    def _spread(self) -> Iterator[tuple[Fraction, Fraction, Coefficients]]:
+        return zip(self.breaks, self.breaks[1:], self.pieces, strict=False)
 
     def integral(self, start: Fraction, end: Fraction) -> Fraction:
         """The exact integral from start to end, both in [a, b].
@@ -136,7 +141,7 @@ class Piecewise:
         Fraction(2, 1)
         """
         total = Fraction(0)
-        for left, right, piece in zip(self.breaks, self.breaks[1:], self.pieces, strict=False):
+        for left, right, piece in self._spread():
             low, high = max(left, start), min(right, end)
             if low < high:
                 primitive = (Fraction(0), *(v / (k + 1) for k, v in enumerate(piece)))
@@ -166,6 +171,43 @@ class Piecewise:
             else:
                 negative += area
         return positive, negative
+
+
+GRID = Fraction(1, 10**9)
+"""Roots that are not rational are given to the nearest multiple of this."""
+
+
+def sign_changes(piece: Sequence[Fraction], end: Fraction) -> tuple[Fraction, ...]:
+    """Where a polynomial changes sign strictly inside (0, end), in order.
+
+    A straight one exactly; a curved one is bisected between the turns of its derivative, down to
+    ``GRID``. A root where it touches zero without changing sign is none.
+
+    >>> sign_changes((Fraction(-2), Fraction(0), Fraction(1)), Fraction(2))
+    (Fraction(707106781, 500000000),)
+    """
+    piece = _trimmed(tuple(piece))
+    if len(piece) == 2:
+        root = -piece[0] / piece[1]
+        return (root,) if 0 < root < end else ()
+    stops = (Fraction(0), *sign_changes(_derivative(piece), end), end) if len(piece) > 2 else ()
+    found = []
+    for low, high in itertools.pairwise(stops):
+        rising = _evaluated(piece, low) < 0
+        if _evaluated(piece, low) * _evaluated(piece, high) < 0:
+            first, last = int(low / GRID), int(high / GRID) + 1
+            while last - first > 1:
+                middle = (first + last) // 2
+                if (_evaluated(piece, middle * GRID) < 0) == rising:
+                    first = middle
+                else:
+                    last = middle
+            found.append(min(first * GRID, last * GRID, key=lambda x: abs(_evaluated(piece, x))))
+    return tuple(root for root in found if 0 < root < end)
+
+
+def _derivative(piece: Sequence[Fraction]) -> Coefficients:
+    return tuple(power * value for power, value in enumerate(piece))[1:] or (Fraction(0),)
 
 
 def _trimmed(piece: Coefficients) -> Coefficients:

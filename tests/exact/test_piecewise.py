@@ -82,9 +82,19 @@ def test_zeros_runs_and_areas(seed: int) -> None:
     assert [float(area) for area in ours.areas()] == pytest.approx([positive, negative])
 
 
-def test_zeros_of_curved_pieces_are_refused() -> None:
-    with pytest.raises(ValueError, match="straight"):
-        Piecewise.from_pieces([(0, 1, (0, 0, 1))]).zeros()
+@pytest.mark.parametrize("seed", range(20))
+def test_zeros_and_turns_of_curved_pieces_are_numpys_roots(seed: int) -> None:
+    """Reference: numpy.roots of the same cubic, real simple roots inside the piece."""
+    rng = Random(seed)
+    cubic = [Fraction(rng.randint(-50, 50), 7) for _ in range(4)]
+    line = Piecewise.from_pieces([(1, 9, cubic)])
+    for found, coefficients in (
+        (line.zeros(), cubic),
+        (line.turns(), [k * c for k, c in enumerate(cubic)][1:]),
+    ):
+        roots = np.roots([float(c) for c in reversed(coefficients)])
+        inside = sorted(1 + r.real for r in roots if abs(r.imag) < 1e-9 and 0 < r.real < 8)
+        assert [float(x) for x in found] == pytest.approx(inside, abs=1e-8)
 
 
 @pytest.mark.parametrize("seed", SEEDS)
