@@ -247,7 +247,15 @@ def test_rates_on_either_side() -> None:
     assert rate(line, keen, before, -1, "left") == 7 * Fraction(1, 2)
 
 
-def test_curved_lines_are_refused() -> None:
-    curved = Piecewise.from_pieces([(0, 4, (0, 0, 1))])
-    with pytest.raises(ValueError, match="straight"):
-        governing(curved, make_load((1, 0)), 1)
+def test_a_curved_line_governs_where_the_rate_is_zero() -> None:
+    """Line x (6 - x), axles 2 and 1 at distance 2 behind: E(s) = 2 s (6 - s) + (s - 2)(8 - s) is
+    greatest at s = 11/3, where it is -3 s² + 22 s - 16 = 73/3 (calculus)."""
+    curved = Piecewise.from_pieces([(0, 6, (0, 6, -1))])
+    load = make_load((2, 0), (1, 2))
+    found = governing(curved, load, 1)
+    assert found.chosen is not None
+    assert found.chosen.breakpoint is None
+    assert float(found.chosen.position.lead_at) == pytest.approx(11 / 3, abs=1e-8)
+    assert float(found.axles) == pytest.approx(73 / 3, abs=1e-12)
+    assert found.rates is not None
+    assert max(abs(float(one)) for one in found.rates) < 1e-7

@@ -172,6 +172,9 @@ def test_the_side_with_fewer_forces_is_kept() -> None:
     assert [cut.keeps for cut in kept.values()] == ["left", "right", "left", "left"]
     assert [cut.equation.name for cut in kept.values()] == ["A-1", "2-r1", "r1-3", "r1-4"]
     assert [len(cut.equation.actions) for cut in kept.values()] == [2, 2, 2, 2]
+    for cut in kept.values():
+        (own,) = (one for one in cut.equation.actions if one.unknown == cut.effect)
+        assert own.edge == (1 if cut.keeps == "left" else -1)
 
 
 def test_faces_of_a_support() -> None:
