@@ -75,6 +75,15 @@ def effect_line(
     return cut.equation.solved_for(effect, lines, beam.length), cut
 
 
+def value_of(
+    beam: Beam, system: System, values: Mapping[Effect, Fraction], effect: Effect
+) -> Fraction:
+    """The value of an effect from those of the unknowns, no load on the beam."""
+    if effect in values:
+        return values[effect]
+    return cut_at(beam, system, effect).equation.number_for(effect, values)
+
+
 def _body_cut(beam: Beam, system: System, effect: Effect) -> tuple[Body, bool]:
     """The body that the cut runs through, and whether the support there lies left of the cut."""
     at = effect.station
