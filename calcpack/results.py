@@ -10,6 +10,7 @@ from typing import Any
 
 import rfc8785
 
+from calcpack.derive.kinds import LINE_KIND
 from calcpack.exact.numbers import exact_text
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.beam import Beam
@@ -86,10 +87,9 @@ def _plan_step(beam: Beam, step: PlanStep) -> Json:
 def _line(solution: Solution, found: Line) -> Json:
     line, beam = found.line, solution.calculation.beam
     positive, negative = line.areas()
-    kind = "number" if found.effect.kind in ("reaction", "shear") else "length"
     return {
         "effect": effect_entry(found.effect),
-        "unit": SYSTEMS[solution.calculation.units][kind],
+        "unit": SYSTEMS[solution.calculation.units][LINE_KIND[found.effect.kind]],
         "pieces": [
             {
                 "from": exact_text(start),

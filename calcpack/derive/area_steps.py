@@ -5,22 +5,19 @@ from __future__ import annotations
 from fractions import Fraction
 
 from calcpack.derive.book import Book
-from calcpack.derive.influence_steps import LINE_KIND
-from calcpack.derive.steps import AreaGroup, QuantityKind, Step
+from calcpack.derive.kinds import AREA_KIND
+from calcpack.derive.steps import AreaGroup, Step
 from calcpack.exact.formula import Formula, Leaf, Symbol, constant, total
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.request import Effect
 from calcpack.statics.system import key_of
-
-AREA_KIND: dict[QuantityKind, QuantityKind] = {"number": "length", "length": "area"}
-"""What the area under a line of that kind is."""
 
 
 def area_group(book: Book, effect: Effect, line: Piecewise) -> AreaGroup:
     """Write every zero, every stretch's area (trapezium or triangle) and the two sums."""
     number = book.open_group()
     root = f"area/{key_of(effect)}"
-    kind = AREA_KIND[LINE_KIND[effect.kind]]
+    kind = AREA_KIND[effect.kind]
     zeros = _zeros(book, root, effect, line)
     parts: list[Step] = list(zeros.values())
     signed: dict[int, list[tuple[int, Formula]]] = {1: [], -1: []}

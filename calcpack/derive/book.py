@@ -5,7 +5,8 @@ from __future__ import annotations
 from fractions import Fraction
 
 from calcpack.derive.closing import closing_decimals
-from calcpack.derive.steps import STEP, Derivation, Group, QuantityKind, StationGroup, Step
+from calcpack.derive.kinds import DECIMALS, INPUT_DECIMALS, QuantityKind
+from calcpack.derive.steps import STEP, Derivation, Group, StationGroup, Step
 from calcpack.errors import ProgramFault
 from calcpack.exact.formula import Formula, Leaf, Symbol, Variable, constant, evaluate
 from calcpack.exact.numbers import decimals_to_end
@@ -13,19 +14,6 @@ from calcpack.exact.piecewise import Side
 from calcpack.model.beam import Beyond, Datum, Source, Station, Tenth, Typed
 from calcpack.model.request import Calculation, Effect
 from calcpack.statics.system import place_name
-
-DECIMALS: dict[QuantityKind, int] = {
-    "number": 4,
-    "length": 3,
-    "force": 2,
-    "line load": 3,
-    "moment": 2,
-    "area": 3,
-}
-"""Decimals that a column of each kind starts with; closing may add some."""
-
-INPUT_DECIMALS: dict[QuantityKind, int] = dict.fromkeys(DECIMALS, 2) | {"length": 3}
-"""Decimals that an input of each kind is printed with at least."""
 
 WHOLE_WITHIN = 6
 """An input that ends within so many decimals is printed whole."""

@@ -30,9 +30,12 @@ def closing_decimals(
         Decimals by origin; None means: printed as a fraction.
     """
     decimals = dict(start)
-    members: dict[str, list[str]] = {}
+    members: dict[str, dict[str, Fraction]] = {}
     for step in steps:
-        members.setdefault(step.column, []).append(STEP + step.key)
+        if step.value is not None:
+            origin = STEP + step.key
+            members.setdefault(step.column, {})[origin] = step.value
+            decimals[origin] = _fitting(step.value, decimals[origin])
     columns = {STEP + step.key: members[step.column] for step in steps}
     changed = True
     while changed:
@@ -40,14 +43,10 @@ def closing_decimals(
         for step in reversed(steps):
             while step.value is not None and not closes(step, decimals):
                 refined = _weakest(step, decimals)
-                more = _one_more(_value(step, refined), decimals[refined])
-                decimals[refined] = more
-                if more is not None:
-                    decimals.update(
-                        (other, more)
-                        for other in columns.get(refined, ())
-                        if (places := decimals[other]) is not None and places < more
-                    )
+                more = (decimals[refined] or 0) + 1
+                column = columns.get(refined, {refined: _value(step, refined)})
+                for origin, value in column.items():
+                    decimals[origin] = _refined(value, decimals[origin], more)
                 changed = True
     return decimals
 
@@ -86,8 +85,19 @@ def _value(step: Step, origin: str) -> Fraction:
     return next(leaf.value for leaf in leaves(step.formula) if leaf.origin == origin)
 
 
-def _one_more(value: Fraction, decimals: int | None) -> int | None:
-    assert decimals is not None
-    if significant_digits(number_text(value, decimals + 1)) > MOST_SIGNIFICANT_DIGITS:
-        return None
-    return decimals + 1
+def _fitting(value: Fraction, decimals: int | None) -> int | None:
+    """As many of the decimals as leave the number with 15 significant digits."""
+    while decimals is not None and _too_long(value, decimals):
+        decimals = decimals - 1 if decimals else None
+    return decimals
+
+
+def _too_long(value: Fraction, decimals: int) -> bool:
+    return significant_digits(number_text(value, decimals)) > MOST_SIGNIFICANT_DIGITS
+
+
+def _refined(value: Fraction, decimals: int | None, more: int) -> int | None:
+    """At least ``more`` decimals, or the fraction where that would be too many digits."""
+    if decimals is None or decimals >= more:
+        return decimals
+    return None if _too_long(value, more) else more

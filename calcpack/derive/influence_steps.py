@@ -6,7 +6,8 @@ from collections.abc import Callable, Iterator
 from fractions import Fraction
 
 from calcpack.derive.book import LOAD_PLACE, Book, unit_load, variable_place
-from calcpack.derive.steps import LineGroup, QuantityKind, Row, Step
+from calcpack.derive.kinds import LINE_KIND, QuantityKind
+from calcpack.derive.steps import LineGroup, Row, Step
 from calcpack.exact.formula import Formula, Symbol, Variable, total
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.beam import Station
@@ -15,14 +16,6 @@ from calcpack.statics.equation import Equation, Term
 from calcpack.statics.influence import Cut
 from calcpack.statics.plan import PlanStep
 from calcpack.statics.system import key_of, place_name, symbol_of
-
-LINE_KIND: dict[str, QuantityKind] = {
-    "reaction": "number",
-    "shear": "number",
-    "moment": "length",
-    "moment reaction": "length",
-}
-"""The unit load has no unit: a line of force is a pure number, one of moment a length."""
 
 
 def line_group(book: Book, quantity: Effect, source: PlanStep | Cut, line: Piecewise) -> LineGroup:

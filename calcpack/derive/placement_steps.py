@@ -5,10 +5,10 @@ from __future__ import annotations
 from bisect import bisect_left
 
 from calcpack.derive.book import Book
+from calcpack.derive.kinds import EFFECT_KIND, LINE_KIND, QuantityKind
 from calcpack.derive.steps import (
     AreaGroup,
     PlacementGroup,
-    QuantityKind,
     Step,
     TrainGroup,
 )
@@ -19,13 +19,6 @@ from calcpack.model.request import Effect
 from calcpack.moving.critical import Candidate, Governing
 from calcpack.moving.placement import AxleShare
 from calcpack.statics.system import key_of
-
-EFFECT_KIND: dict[str, QuantityKind] = {
-    "reaction": "force",
-    "shear": "force",
-    "moment": "moment",
-    "moment reaction": "moment",
-}
 
 
 def train_group(book: Book, load: MovingLoad) -> TrainGroup:
@@ -140,11 +133,7 @@ def _ordinate(
             formula = y_low + (y_high - y_low) * (book.cite(at) - book.place(low)) / run
     key, symbol = f"{root}/ordinate={index + 1}", Symbol("y", str(index + 1))
     column = f"{root}/ordinates"
-    return book.find(key, symbol, formula, _line_kind(effect), share.ordinate, column)
-
-
-def _line_kind(effect: Effect) -> QuantityKind:
-    return "number" if EFFECT_KIND[effect.kind] == "force" else "length"
+    return book.find(key, symbol, formula, LINE_KIND[effect.kind], share.ordinate, column)
 
 
 def _value(

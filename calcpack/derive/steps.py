@@ -5,8 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 from fractions import Fraction
-from typing import Literal
 
+from calcpack.derive.kinds import QuantityKind
 from calcpack.exact.formula import PLAIN, Formula, Leaf, Symbol, Variable, leaves, symbols, write
 from calcpack.exact.numbers import printed
 from calcpack.exact.piecewise import Side
@@ -18,8 +18,6 @@ from calcpack.statics.plan import PlanStep
 
 STEP = "step:"
 """What the origin of a leaf starts with where its digits are another step's result."""
-
-QuantityKind = Literal["number", "length", "force", "line load", "moment", "area"]
 
 
 @dataclass(frozen=True)

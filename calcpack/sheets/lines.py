@@ -6,7 +6,7 @@ import re
 from collections.abc import Iterator
 from fractions import Fraction
 
-from calcpack.derive.book import DECIMALS
+from calcpack.derive.kinds import AREA_KIND, DECIMALS
 from calcpack.derive.steps import AreaGroup, LineGroup, StationGroup, Step
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.request import Detail, Effect
@@ -235,7 +235,7 @@ def _drawn(
     yield Heading(2, ("Line and areas: ", effect_title(effect)), areas.number)
     words = f"Ordinates from {_cited(group)}; areas by trapezia between the zeros."
     yield Paragraph((words,), leads=True)
-    places = result_of(solution, areas.positive).decimals or DECIMALS["area"]
+    places = result_of(solution, areas.positive).decimals or DECIMALS[AREA_KIND[effect.kind]]
     title = f"{effect.kind} at {effect.at}"
     yield Figure(
         line_figure(calculation.beam, line, title, unit, decimals, calculation.units, places)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from fractions import Fraction
 
+from calcpack.derive.kinds import LINE_KIND
 from calcpack.exact.units import SYSTEMS
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Value
 from calcpack.sheets.figures import beam_figure
@@ -89,7 +90,7 @@ def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
         Column("agrees", width=1),
     )
     for line in solution.lines:
-        unit = units["number" if line.effect.kind in ("reaction", "shear") else "length"]
+        unit = units[LINE_KIND[line.effect.kind]]
         title = effect_title(line.effect) + (f", {unit}" if unit else "")
         rows = tuple(
             ((title if not n else "",), (station.name or str(station.at),), ("",), ("",), ("",))

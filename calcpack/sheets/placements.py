@@ -5,8 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 from fractions import Fraction
 
-from calcpack.derive.book import DECIMALS
-from calcpack.derive.placement_steps import EFFECT_KIND
+from calcpack.derive.kinds import DECIMALS, LINE_KIND
 from calcpack.derive.steps import PlacementGroup, TrainGroup
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.loads import MovingLoad
@@ -115,7 +114,7 @@ def _placement(solution: Solution, group: PlacementGroup, swept: float) -> Itera
         yield Paragraph(("No position of the load works in this sense: it stays away.",))
     else:
         line = next(one.line for one in solution.lines if one.effect == group.effect)
-        kind = "number" if EFFECT_KIND[group.effect.kind] == "force" else "length"
+        kind = LINE_KIND[group.effect.kind]
         on_beam = [s for s in found.shares if s.standing == "counts"]
         yield Figure(
             placement_figure(
@@ -125,7 +124,7 @@ def _placement(solution: Solution, group: PlacementGroup, swept: float) -> Itera
                 found.loaded,
                 f"{group.effect.kind} at {group.effect.at}",
                 units[kind],
-                DECIMALS["number" if kind == "number" else "length"],
+                DECIMALS[kind],
                 calculation.units,
                 found.chosen.position.heading if found.chosen else "right",
             )

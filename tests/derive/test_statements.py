@@ -1,0 +1,176 @@
+"""Statements in symbols mean what they say: with values put in, equilibrium holds and each solved
+form gives the line; and a step's key, id, symbols and unit are those that outlive a release."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from fractions import Fraction
+from random import Random
+
+import pytest
+from beams import effects_of, make_beam, random_beam
+from making import lines_of, make_calculation, make_effect, make_load
+from printed_steps import evaluated
+
+from calcpack.derive.book import LOAD_PLACE, Book
+from calcpack.derive.steps import AreaGroup, LineGroup, PlacementGroup, Step
+from calcpack.errors import ProgramFault
+from calcpack.exact.formula import PLAIN, Leaf, Symbol, Variable, constant, write
+from calcpack.exact.piecewise import Side
+from calcpack.model.beam import Beam, Release, Section, Support, Typed
+from calcpack.results import results
+from calcpack.solution import Solution, solve
+from calcpack.statics.system import symbol_of
+
+SIDES: tuple[Side, ...] = ("left", "right")
+
+
+def value_of(step: Step, values: Mapping[Symbol, Fraction]) -> Fraction:
+    """The right side of a statement with a value for every variable, as plain arithmetic."""
+
+    def digits(leaf: Leaf | Variable) -> str:
+        value = leaf.value if isinstance(leaf, Leaf) else values[leaf.symbol]
+        return f"({value})"
+
+    return evaluated(write(step.formula, PLAIN, digits))
+
+
+@pytest.mark.parametrize("seed", range(20))
+def test_equilibrium_and_solved_forms(seed: int) -> None:
+    beam = random_beam(Random(seed))
+    solution = solve(make_calculation(beam, effects_of(beam)))
+    lines = {**solution.unknowns, **{line.effect: line.line for line in solution.lines}}
+    loaded = unloaded = 0
+    for group in solution.derivation.groups:
+        if not isinstance(group, LineGroup):
+            continue
+        equation = group.source.equation
+        assert group.balance.symbols.endswith(" = 0")
+        forms = {form.key.rpartition("/")[2]: form for form in group.forms}
+        assert ("loaded" in forms) == (equation.start < equation.end)
+        for station in beam.stations:
+            for side in SIDES:
+                at = station.at
+                if at in (0, beam.length) and side == ("right" if at else "left"):
+                    continue
+                values = {symbol_of(one): line.value(at, side) for one, line in lines.items()}
+                values[LOAD_PLACE] = at
+                after = at > equation.start or (at == equation.start and side == "right")
+                before = at < equation.end or (at == equation.end and side == "left")
+                on_body = after and before
+                form = forms["loaded" if on_body else "elsewhere"]
+                assert form.symbols.startswith(f"{symbol_of(group.quantity)} = ")
+                assert value_of(form, values) == values[symbol_of(group.quantity)]
+                if on_body or equation.start == equation.end:
+                    assert value_of(group.balance, values) == 0
+                    loaded += on_body
+                unloaded += not on_body
+    assert loaded > 10
+    assert unloaded > 10
+
+
+def statements(solution: Solution) -> dict[str, str]:
+    return {step["key"]: step["symbols"] for step in results(solution)["steps"]}
+
+
+def suspended() -> Beam:
+    """The beam of the file format's own example, with a section in the suspended span."""
+    supports = (("A", 0, "pin"), ("B", 40, "roller"), ("C", 88, "roller"), ("D", 128, "roller"))
+    return Beam(
+        Fraction(128),
+        tuple(
+            Support(name, Fraction(at), "pin" if kind == "pin" else "roller", Typed(f"s[{at}].at"))
+            for name, at, kind in supports
+        ),
+        tuple(
+            Release(name, Fraction(at), "hinge", Typed(f"beam.releases[{i}].at"))
+            for i, (name, at) in enumerate((("h1", 52), ("h2", 76)))
+        ),
+        (Section("1", Fraction(60), Typed("beam.sections[0].at")),),
+        Typed("beam.length"),
+    )
+
+
+def test_the_step_of_the_file_format() -> None:
+    """Moments about h1 on the suspended span give the shear at h2: as it is written by hand."""
+    beam = suspended()
+    solution = solve(make_calculation(beam, [make_effect(beam, "moment", "1")]))
+    step = next(one for one in results(solution)["steps"] if one["key"] == "unknown/V_h2/at=60")
+    assert step["numbers"] == "-1 * (60.000 - 52.000) / (76.000 - 52.000)"
+    assert step["result"] == "-0.33333"
+    assert step["inputs"] == [
+        "beam.sections[0].at",
+        "beam.releases[0].at",
+        "beam.releases[1].at",
+    ]
+    assert step["uses"] == []
+    said = statements(solution)
+    assert said["unknown/V_h2/equilibrium"] == ("ΣM_h1 = V_h2 * (x_h2 - x_h1) + P * (x - x_h1) = 0")
+    assert said["unknown/V_h2/loaded"] == "V_h2 = -P * (x - x_h1) / (x_h2 - x_h1)"
+    assert said["unknown/V_h2/elsewhere"] == "V_h2 = 0"
+    assert said["effect/M_1/equilibrium"] == "ΣM_1 = V_h1 * (x_1 - x_h1) - M_1 + P * (x - x_1) = 0"
+
+
+def test_a_placement_in_numbers() -> None:
+    """12 over midspan and 6 three behind: 36 of axles, 25 of load, allowance and share."""
+    beam = make_beam(10, [(0, "pin"), (10, "roller")], sections=[5])
+    load = make_load((12, 0), (6, 3), uniform=2, allowance="0.25", distribution="0.5")
+    solution = solve(make_calculation(beam, [make_effect(beam, "moment", "1")], [load]))
+    steps = {step["key"]: step for step in results(solution)["steps"]}
+    root = "placement/moving[0]/M_1/max"
+    assert steps[f"{root}/axles"]["numbers"] == "12.00 * 2.500 + 6.00 * 1.000"
+    assert steps[f"{root}/uniform"]["numbers"] == "2.00 * 12.500"
+    assert steps[root]["numbers"] == "(36.00 * (1 + 0.25) + 25.00) * 0.50"
+    assert steps[root]["result"] == "35.00"
+    assert [steps[root][name] for name in ("unit", "inputs", "uses")] == [
+        "kip·ft",
+        ["moving[0].allowance", "moving[0].distribution"],
+        [f"{root}/axles", f"{root}/uniform"],
+    ]
+    assert steps[f"{root}/axle=2"]["numbers"] == "5.000 - 3.000"
+    assert steps["area/M_1/positive"]["unit"] == "ft²"
+    least = steps["placement/moving[0]/M_1/min"]
+    assert (least["numbers"], least["result"]) == ("0", "0.00")
+
+
+def test_keys_stay_when_a_section_is_added() -> None:
+    """What stands at the old stations keeps its key and its value; the numbers on sheets move."""
+    load = make_load((12, 0), (6, 3))
+    supports = [(2, "pin"), (12, "roller")]
+    found = []
+    for sections in ([7], [7, 9]):
+        beam = make_beam(15, supports, sections=sections)  # type: ignore[arg-type]
+        effects = [make_effect(beam, "moment", "1"), make_effect(beam, "reaction", "A")]
+        solution = solve(make_calculation(beam, effects, [load]))
+        found.append({step.key: step.value for step in solution.derivation.steps})
+    assert found[0].items() <= found[1].items()
+    assert len(found[1]) > len(found[0])
+
+
+def test_a_step_that_misses_the_engine_is_a_fault() -> None:
+    beam = make_beam(10, [(0, "pin"), (10, "roller")])
+    book = Book(make_calculation(beam, []))
+    book.open_group()
+    with pytest.raises(ProgramFault, match="step one gives 3, the engine found 2"):
+        book.find("one", Symbol("z"), constant(3), "number", Fraction(2))
+
+
+def test_groups_are_numbered_in_order() -> None:
+    beam = make_beam(10, [(0, "pin"), (10, "roller")], sections=[5])
+    loads = [make_load((12, 0)), make_load((3, 0), number=1)]
+    effects = [make_effect(beam, "moment", "1"), make_effect(beam, "shear", "1")]
+    solution = solve(make_calculation(beam, effects, loads))
+    groups = solution.derivation.groups
+    assert [group.number for group in groups] == list(range(1, len(groups) + 1))
+    for group in groups:
+        ids = [step.id for step in group.steps]
+        assert ids == [f"{group.number}.{place}" for place in range(1, len(ids) + 1)]
+    assert sum(isinstance(group, AreaGroup) for group in groups) == 2
+    placements = [group for group in groups if isinstance(group, PlacementGroup)]
+    assert [(g.load.path, g.effect.kind, g.governing.sense) for g in placements] == [
+        (path, kind, sense)
+        for path in ("moving[0]", "moving[1]")
+        for kind in ("moment", "shear")
+        for sense in (1, -1)
+    ]
+    assert lines_of(beam, effects) == [line.line for line in solution.lines]
