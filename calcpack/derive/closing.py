@@ -86,9 +86,9 @@ def _value(step: Step, origin: str) -> Fraction:
 
 
 def _fitting(value: Fraction, decimals: int | None) -> int | None:
-    """As many of the decimals as leave the number with 15 significant digits."""
+    """As many of the decimals, but one at least, as leave the number with 15 significant digits."""
     while decimals is not None and _too_long(value, decimals):
-        decimals = decimals - 1 if decimals else None
+        decimals = decimals - 1 if decimals > 1 else None
     return decimals
 
 
