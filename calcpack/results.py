@@ -17,7 +17,7 @@ from calcpack.model.beam import Beam
 from calcpack.model.request import Effect
 from calcpack.moving.critical import Candidate, Governing, total_effect
 from calcpack.moving.placement import Position
-from calcpack.solution import Line, Placement, Solution
+from calcpack.solution import Line, Placement, Settled, Solution
 from calcpack.statics.plan import PlanStep, equation_in_words
 from calcpack.statics.system import symbol_of
 
@@ -45,6 +45,7 @@ def results(solution: Solution) -> Json:
         "plan": [_plan_step(calculation.beam, step) for step in solution.plan],
         "lines": [_line(solution, line) for line in solution.lines],
         "placements": [_placement(placement) for placement in solution.placements],
+        "permanent": [_settled(one) for one in solution.settled],
         "envelopes": [],
         "absolute": [],
         "combinations": [],
@@ -109,6 +110,16 @@ def _line(solution: Solution, found: Line) -> Json:
         "zeros": [exact_text(zero) for zero in line.zeros()],
         "area_positive": float(positive),
         "area_negative": float(negative),
+    }
+
+
+def _settled(found: Settled) -> Json:
+    return {
+        "name": found.case.name,
+        "effects": [
+            {"effect": effect_entry(effect), "value": float(value)}
+            for effect, value in found.effects.items()
+        ],
     }
 
 

@@ -74,6 +74,12 @@ class Book:
         self._steps.append(step)
         return step
 
+    def state_value(
+        self, key: str, left: Symbol, formula: Formula, kind: QuantityKind, column: str
+    ) -> Step:
+        """Write a step whose value the engine has no other name for."""
+        return self.find(key, left, formula, kind, evaluate(formula), column)
+
     def state(
         self,
         key: str,

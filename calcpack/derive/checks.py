@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from fractions import Fraction
 from typing import Literal
 
 from calcpack.errors import Disagreement
 from calcpack.exact.piecewise import Piecewise
+from calcpack.exact.units import SYSTEMS, parse_unit
 from calcpack.model.beam import Beam
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
@@ -40,35 +42,59 @@ class SecondMethods:
     stiffness: Mapping[Effect, Ordinates]
 
 
-def compare_lines(beam: Beam, lines: Mapping[Effect, Piecewise]) -> SecondMethods:
+def conversion_of(units: str, effect: Effect) -> Fraction:
+    """How many of the calculation's units of deflection make its unit of length; 1 for others.
+
+    >>> conversion_of("SI", Effect("deflection", "1", Fraction(2)))
+    Fraction(1000, 1)
+    """
+    if effect.kind != "deflection":
+        return Fraction(1)
+    system = SYSTEMS[units]
+    return parse_unit(system["length"])[0] / parse_unit(system["deflection"])[0]
+
+
+def compare_lines(beam: Beam, units: str, lines: Mapping[Effect, Piecewise]) -> SecondMethods:
     """Compare every line with the kinematic statement (exactly) and the stiffness solution.
 
     Raises:
         Disagreement: a line differs by more than rounding can explain.
     """
     effects = tuple(lines)
-    by_stiffness = dict(zip(effects, ordinates(beam, effects), strict=True))
+    factors = {effect: conversion_of(units, effect) for effect in effects}
+    by_stiffness = {
+        effect: _scaled(found, float(factors[effect]))
+        for effect, found in zip(effects, ordinates(beam, effects), strict=True)
+    }
     agreements = []
     for effect, kinematic in zip(effects, influence_line(beam, effects), strict=True):
         line = lines[effect]
-        if kinematic != line:
+        if kinematic * factors[effect] != line:
             raise Disagreement(f"{effect.label}: the kinematic statement gives another line")
-        found = by_stiffness[effect]
-        stops = [station.at for station in beam.stations]
-        exact = [(float(line.left(at)), float(line.right(at))) for at in stops]
-        scale = 1 + max(abs(value) for pair in exact for value in pair)
-        worst = max(
-            max(abs(left - one), abs(right - two))
-            for (left, right), one, two in zip(exact, found.left, found.right, strict=True)
-        )
-        if not worst <= WITHIN * scale:
-            raise Disagreement(
-                f"{effect.label}: the stiffness solution differs by {worst:.1e}, "
-                f"more than {WITHIN:.0e} of the line's size"
-            )
+        _compare_stiffness(beam, effect, line, by_stiffness[effect])
         agreements.append(Agreement(effect, "kinematic", 0.0))
         agreements.append(Agreement(effect, "stiffness", WITHIN))
     return SecondMethods(tuple(agreements), by_stiffness)
+
+
+def _scaled(found: Ordinates, factor: float) -> Ordinates:
+    return replace(found, left=found.left * factor, right=found.right * factor)
+
+
+def _compare_stiffness(beam: Beam, effect: Effect, line: Piecewise, found: Ordinates) -> None:
+    stops = [station.at for station in beam.stations]
+    exact = [(float(line.left(at)), float(line.right(at))) for at in stops]
+    scale = max(abs(value) for pair in exact for value in pair)
+    scale += 1 if effect.kind not in ("deflection", "rotation") else 0
+    worst = max(
+        max(abs(left - one), abs(right - two))
+        for (left, right), one, two in zip(exact, found.left, found.right, strict=True)
+    )
+    if not worst <= WITHIN * scale:
+        raise Disagreement(
+            f"{effect.label}: the stiffness solution differs by {worst:.1e}, "
+            f"more than {WITHIN:.0e} of the line's size"
+        )
 
 
 def swept_value(second: SecondMethods, effect: Effect, load: MovingLoad, found: Governing) -> float:

@@ -8,7 +8,7 @@ from fractions import Fraction
 from calcpack.derive.book import LOAD_PLACE, Book, unit_load, variable_place
 from calcpack.derive.kinds import LINE_KIND, QuantityKind
 from calcpack.derive.steps import LineGroup, Row, Step
-from calcpack.exact.formula import Formula, Symbol, Variable, total
+from calcpack.exact.formula import Formula, Leaf, Symbol, Variable, total
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.beam import Station
 from calcpack.model.request import Effect
@@ -39,7 +39,9 @@ def _balance(book: Book, root: str, equation: Equation) -> Step:
     else:
         left, kind = Symbol("ΣM", book.tag_at(equation.about)), LINE_KIND["moment"]
         load = (1, unit_load() * (variable_place() - book.place(equation.about)))
-    terms = [(term.sign, _with_arm(book, term, _symbol_only)) for term in equation.terms]
+    terms = [
+        (term.sign, _with_arm(book, term, _symbol_only(term.quantity))) for term in equation.terms
+    ]
     if equation.start < equation.end:
         terms.append(load)
     key = f"{root}/equilibrium"
@@ -57,7 +59,7 @@ def _forms(
         regions = [(False, "wherever the load stands")]
     for loaded, words in regions:
         load = variable_place() if loaded else None
-        formula = _solved(book, equation, quantity, _symbol_only, load)
+        formula = solved_for(book, equation, quantity, _symbol_only, load)
         key = f"{root}/{'loaded' if loaded else 'elsewhere'}"
         forms.append(book.state(key, left, formula, kind, condition=words))
     return tuple(forms)
@@ -81,7 +83,7 @@ def _rows(
                 return book.cite(book.ordinates[other, at, side])
 
             load = book.place(station.at, LOAD_PLACE) if loaded else None
-            formula = _solved(book, equation, quantity, leaf, load)
+            formula = solved_for(book, equation, quantity, leaf, load)
             key = f"{root}/at={station.at}" + (f"/{side}" if len(stands_for) == 1 else "")
             step = book.find(key, left, formula, kind, line.value(station.at, side), root)
             for one in stands_for:
@@ -121,28 +123,32 @@ def _symbol_only(quantity: Effect) -> Formula:
     return Variable(symbol_of(quantity))
 
 
-def _with_arm(book: Book, term: Term, leaf: Callable[[Effect], Formula]) -> Formula:
-    quantity = leaf(term.quantity)
+def _with_arm(book: Book, term: Term, quantity: Formula) -> Formula:
     if term.arm is None:
         return quantity
     low, high = term.arm
     return quantity * (book.place(high) - book.place(low))
 
 
-def _solved(
+def solved_for(
     book: Book,
     equation: Equation,
     quantity: Effect,
-    leaf: Callable[[Effect], Formula],
+    leaf: Callable[[Effect], Formula | None],
     load_at: Formula | None,
+    *,
+    couple: bool = False,
 ) -> Formula:
-    """The right side of ``quantity = ...``; without ``load_at`` no load stands on the body."""
+    """The right side of ``quantity = ...`` for an equation.
+
+    ``leaf`` gives every other quantity, None where it is zero and need not be written; without
+    ``load_at`` no load stands on the body, with ``couple`` a unit couple (clockwise) acts on it.
+    """
     wanted = equation.term(quantity)
-    terms: list[tuple[int, Formula]] = [
-        (-wanted.sign * term.sign, _with_arm(book, term, leaf))
-        for term in equation.terms
-        if term.quantity != quantity
-    ]
+    terms: list[tuple[int, Formula]] = []
+    for term in equation.terms:
+        if term.quantity != quantity and (known := leaf(term.quantity)) is not None:
+            terms.append((-wanted.sign * term.sign, _with_arm(book, term, known)))
     if load_at is not None:
         if equation.about is None:
             terms.append((wanted.sign, unit_load()))
@@ -152,6 +158,8 @@ def _solved(
         else:
             arm = load_at - book.place(equation.about)
             terms.append((-wanted.sign, unit_load() * arm))
+    if couple and equation.about is not None:
+        terms.append((-wanted.sign, Leaf(Fraction(1), Symbol("C"))))
     terms.sort(key=lambda term: term[0] < 0)  # what adds goes first
     top = total(terms)
     if wanted.arm is None or not terms:

@@ -6,16 +6,15 @@ from bisect import bisect_left
 
 from calcpack.derive.book import Book
 from calcpack.derive.kinds import EFFECT_KIND, LINE_KIND, QuantityKind
+from calcpack.derive.shape import Shape
 from calcpack.derive.steps import (
     AreaGroup,
     PlacementGroup,
     Step,
     TrainGroup,
 )
-from calcpack.exact.formula import ONE, ZERO, Formula, Symbol, total
-from calcpack.exact.piecewise import Piecewise
+from calcpack.exact.formula import ONE, ZERO, Formula, Symbol, constant, total
 from calcpack.model.loads import MovingLoad
-from calcpack.model.request import Effect
 from calcpack.moving.critical import Candidate, Governing
 from calcpack.moving.placement import AxleShare
 from calcpack.statics.system import key_of
@@ -42,7 +41,7 @@ def placement_group(
     book: Book,
     train: TrainGroup,
     areas: AreaGroup,
-    line: Piecewise,
+    shape: Shape,
     governing: Governing,
 ) -> PlacementGroup:
     """Write the governing value from the inputs: places, ordinates, sum, factors."""
@@ -60,7 +59,7 @@ def placement_group(
         for index, share in enumerate(governing.shares):
             if share.standing != "off the beam":
                 at = places[f"{root}/axle={index + 1}"]
-                steps.append(_ordinate(book, root, effect, governing, index, share, at))
+                steps.append(_ordinate(book, root, shape, governing, index, share, at))
                 if share.standing == "counts":
                     path = f"{load.path}.axles[{index}].weight"
                     weight = book.given(path, Symbol("W", str(index + 1)), "force")
@@ -85,7 +84,10 @@ def _places(
     """The lead axle's station from the axle that stands at a breakpoint, then every axle's."""
     zeros = {step.value: step for step in areas.parts if "/zero=" in step.key}
     mark = chosen.breakpoint
-    stands = book.cite(zeros[mark]) if mark in zeros else book.place(mark)
+    if mark is None:
+        stands = constant(chosen.position.lead_at)
+    else:
+        stands = book.cite(zeros[mark]) if mark in zeros else book.place(mark)
     sign = 1 if chosen.position.heading == "right" else -1
     lead: Formula = stands
     if chosen.axle:
@@ -109,7 +111,7 @@ def _places(
 def _ordinate(
     book: Book,
     root: str,
-    effect: Effect,
+    shape: Shape,
     governing: Governing,
     index: int,
     share: AxleShare,
@@ -120,17 +122,11 @@ def _ordinate(
     side = governing.chosen.position.side
     stops = [station.at for station in book.beam.stations]
     position = bisect_left(stops, share.at)
-    formula: Formula
+    effect = shape.effect
     if stops[position] == share.at:
-        formula = book.ordinate(effect, share.at, side)
+        formula: Formula = book.ordinate(effect, share.at, side)
     else:
-        low, high = stops[position - 1], stops[position]
-        y_low = book.ordinate(effect, low, "right")
-        y_high = book.ordinate(effect, high, "left")
-        formula = y_low
-        if y_low.value != y_high.value:
-            run = book.place(high) - book.place(low)
-            formula = y_low + (y_high - y_low) * (book.cite(at) - book.place(low)) / run
+        formula = shape.between(book, stops[position - 1], stops[position], book.cite(at))
     key, symbol = f"{root}/ordinate={index + 1}", Symbol("y", str(index + 1))
     column = f"{root}/ordinates"
     return book.find(key, symbol, formula, LINE_KIND[effect.kind], share.ordinate, column)

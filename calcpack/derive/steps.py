@@ -7,10 +7,11 @@ from dataclasses import dataclass
 from fractions import Fraction
 
 from calcpack.derive.kinds import QuantityKind
+from calcpack.elastic.released import State
 from calcpack.exact.formula import PLAIN, Formula, Leaf, Symbol, Variable, leaves, symbols, write
 from calcpack.exact.numbers import printed
 from calcpack.exact.piecewise import Side
-from calcpack.model.loads import MovingLoad
+from calcpack.model.loads import MovingLoad, Permanent
 from calcpack.model.request import Effect
 from calcpack.moving.critical import Governing
 from calcpack.statics.influence import Cut
@@ -111,6 +112,30 @@ class LineGroup:
 
 
 @dataclass(frozen=True)
+class DeflectionGroup:
+    """A line of deflection or rotation: its curve in symbols, its value at every key station."""
+
+    number: int
+    quantity: Effect
+    statement: Step
+    rows: tuple[Row, ...]
+
+    @property
+    def steps(self) -> tuple[Step, ...]:
+        return (self.statement, *(row.step for row in self.rows))
+
+
+@dataclass(frozen=True)
+class SettlementGroup:
+    """What supports that gave way cause: ``values`` of every effect of force or moment."""
+
+    number: int
+    case: Permanent
+    steps: tuple[Step, ...]
+    values: Mapping[Effect, Fraction]
+
+
+@dataclass(frozen=True)
 class AreaGroup:
     """Zeros and areas of an effect's line; ``positive`` and ``negative`` are the two sums."""
 
@@ -145,7 +170,36 @@ class PlacementGroup:
     steps: tuple[Step, ...]
 
 
-Group = StationGroup | LineGroup | AreaGroup | TrainGroup | PlacementGroup
+@dataclass(frozen=True)
+class StepGroup:
+    """Steps under a title, led in by words and statements in symbols.
+
+    ``state`` is the state of the released beam that they find, if they do; ``mark`` names it.
+    """
+
+    number: int
+    title: str
+    words: str
+    statements: tuple[Step, ...]
+    found: tuple[Step, ...]
+    state: State | None = None
+    mark: str = ""
+
+    @property
+    def steps(self) -> tuple[Step, ...]:
+        return (*self.statements, *self.found)
+
+
+Group = (
+    StationGroup
+    | StepGroup
+    | DeflectionGroup
+    | SettlementGroup
+    | LineGroup
+    | AreaGroup
+    | TrainGroup
+    | PlacementGroup
+)
 
 
 @dataclass(frozen=True)

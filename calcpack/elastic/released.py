@@ -75,8 +75,20 @@ class Released:
         return self._under(lambda line: line.value(at, side))
 
     def under_couple(self, at: Fraction, side: Side) -> State:
-        """Under a unit couple, clockwise, on that side of ``at``: two loads close together."""
-        return self._under(lambda line: line.slope(at, side))
+        """Under a unit couple, clockwise, on that side of ``at``: two loads close together.
+
+        A segment's end moment at ``at`` is that beyond the couple, as the segment itself has it;
+        the moment rises by the couple from its left to its right.
+        """
+        found = self._under(lambda line: line.slope(at, side))
+        moments = tuple(
+            (
+                first + (segment.start == at and side == "right"),
+                last - (segment.end == at and side == "left"),
+            )
+            for segment, (first, last) in zip(self.segments, found.moments, strict=True)
+        )
+        return State(moments, found.springs)
 
     def _under(self, read: Callable[[Piecewise], Fraction]) -> State:
         moments = tuple((read(first), read(last)) for first, last in self.moment_lines)

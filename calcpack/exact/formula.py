@@ -7,6 +7,12 @@ from dataclasses import dataclass
 from fractions import Fraction
 from typing import Literal
 
+from calcpack.exact.numbers import decimals_to_end, printed
+
+
+MOST_DECIMALS = 12
+"""A constant that ends within so many decimals is written as a decimal, else as a fraction."""
+
 
 @dataclass(frozen=True)
 class Symbol:
@@ -208,7 +214,8 @@ def symbols(leaf: Leaf | Variable) -> str:
     if leaf.symbol is not None:
         return str(leaf.symbol)
     assert isinstance(leaf, Leaf)
-    return str(leaf.value) if leaf.value.denominator == 1 else f"({leaf.value})"
+    decimals = decimals_to_end(leaf.value, MOST_DECIMALS)
+    return f"({leaf.value})" if decimals is None else printed(leaf.value, decimals)
 
 
 def write(formula: Formula, notation: Notation, leaf: Callable[[Leaf | Variable], str]) -> str:

@@ -10,7 +10,7 @@ MOST_SIGNIFICANT_DIGITS = 15
 SMALLEST = Fraction(1, 10**9)
 LARGEST = Fraction(10**12)
 
-_DECIMAL = re.compile(r"[+-]?(\d+(_\d+)*)(\.(\d+(_\d+)*))?([eE][+-]?\d{1,4})?")
+_DECIMAL = re.compile(r"[+-]?(\d+(_\d+)*)(\.(\d+(_\d+)*))?([eE][+-]?\d{1,4})?", re.ASCII)
 
 
 def read_decimal(text: str) -> Fraction:
@@ -36,7 +36,7 @@ def read_decimal(text: str) -> Fraction:
     if not _DECIMAL.fullmatch(text):
         if text.strip("+-") in ("inf", "nan"):
             raise ValueError("must be a finite number")
-        if re.fullmatch(r"[+-]?[\d_.]+[eE][+-]?\d+", text):
+        if re.fullmatch(r"[+-]?[\d_.]+[eE][+-]?\d+", text, re.ASCII):
             raise ValueError("must be 0 or between 1e-9 and 1e12 in size")
         raise ValueError("must be a decimal number")
     digits = re.split("[eE]", text)[0].lstrip("+-").replace("_", "").replace(".", "").lstrip("0")

@@ -85,6 +85,10 @@ class Piecewise:
         piece, t = self.pieces[index], x - self.breaks[index]
         return _evaluated(_derivative(piece), t)
 
+    def derivative(self) -> Piecewise:
+        """The derivative of each piece; jumps leave no trace in it."""
+        return self.mapped(_derivative)
+
     def _index(self, x: Fraction, side: Side) -> int:
         if not self.breaks[0] <= x <= self.breaks[-1]:
             raise ValueError(f"{x} lies outside {self.breaks[0]} to {self.breaks[-1]}")

@@ -54,7 +54,8 @@ class Support:
     """A support; ``face`` is the side of a release at the same station that it holds, else None.
 
     A spring yields: ``vertical`` is its stiffness in force per length, ``rotational`` in moment
-    per radian, each 0 where it holds nothing of that kind. Other supports do not yield.
+    per radian, each 0 where it holds nothing of that kind. Other supports do not yield. ``path``
+    is where it stands in calc.toml.
     """
 
     name: str
@@ -64,6 +65,7 @@ class Support:
     face: Face | None = None
     vertical: Fraction = Fraction(0)
     rotational: Fraction = Fraction(0)
+    path: str = ""
 
     @property
     def holds_vertical(self) -> bool:

@@ -26,7 +26,8 @@ class Field:
         above: a number must be greater than this.
         least: a number must be this or greater.
         most: a number must be this or less.
-        beside: the key of the same table without which it has no meaning.
+        beside: the key of the same table without which it has no meaning, or a key and what it
+            must say (``kind = "spring"``).
         computed: False where any value but the default is not computed by this release.
     """
 
@@ -56,6 +57,10 @@ def _later(label: str, default: Any = None) -> Field:
 
 def _station(label: str, required: bool = True) -> Field:
     return Field(label, "length", "x", "from the left end of the beam", required=required)
+
+
+def _spring(label: str, kind: str, symbol: str) -> Field:
+    return Field(label, kind, symbol, default=0, least=0, beside='kind = "spring"')
 
 
 _NAME = "unique among supports, releases and sections"
@@ -130,14 +135,13 @@ FIELDS: Mapping[str, Field] = {
         "choice",
         help="guided holds rotation and is free to move vertically",
         required=True,
-        choices=("pin", "roller", "fixed", "guided"),
-        later=("spring",),
+        choices=("pin", "roller", "fixed", "guided", "spring"),
     ),
     "beam.supports[].face": Field(
         "Face of the release held", "choice", help="where a release stands there", choices=_SIDES
     ),
-    "beam.supports[].vertical": _later("Vertical spring"),
-    "beam.supports[].rotational": _later("Rotational spring"),
+    "beam.supports[].vertical": _spring("Vertical spring", "spring", "k"),
+    "beam.supports[].rotational": _spring("Rotational spring", "rotational spring", "kθ"),
     "beam.releases": _tables("Releases"),
     "beam.releases[].name": Field("Release", "name", help=_NAME, required=True),
     "beam.releases[].at": _station("Release station"),
@@ -151,8 +155,26 @@ FIELDS: Mapping[str, Field] = {
     "beam.sections": _tables("Sections", choices=("tenths",)),
     "beam.sections[].name": Field("Section", "name", help=_NAME, required=True),
     "beam.sections[].at": _station("Section station"),
-    "beam.stiffness": _later("Stiffness"),
-    "beam.redundants": _later("Redundants"),
+    "beam.stiffness": _tables("Stiffness"),
+    "beam.stiffness[].from": _station("Start of the stretch", required=False),
+    "beam.stiffness[].to": _station("End of the stretch", required=False),
+    "beam.stiffness[].EI": Field(
+        "Bending stiffness", "EI", "EI", "or E and I instead; or a table for all", above=0
+    ),
+    "beam.stiffness[].E": Field("Elastic modulus", "E", "E", above=0),
+    "beam.stiffness[].I": Field("Second moment of area", "I", "I", above=0),
+    "beam.stiffness[].table": Field(
+        "Table of stiffness", "name", help="a CSV beside calc.toml: from, to and EI, or E and I"
+    ),
+    "beam.stiffness[].column": Field(
+        "Column of EI", "name", help="where it is not called EI", beside="table"
+    ),
+    "beam.redundants": Field(
+        "Redundant",
+        "text",
+        help="such as moment B, moment B left, moment reaction A, reaction C",
+        form="list",
+    ),
     "beam.transfer": _later("Transfer points"),
     "effects": _tables("Effects"),
     "effects[].kind": Field(
@@ -160,8 +182,7 @@ FIELDS: Mapping[str, Field] = {
         "choice",
         form="several",
         required=True,
-        choices=("reaction", "moment reaction", "shear", "moment"),
-        later=("deflection", "rotation"),
+        choices=("reaction", "moment reaction", "shear", "moment", "deflection", "rotation"),
     ),
     "effects[].at": Field(
         "Place of the effect",
@@ -223,7 +244,19 @@ FIELDS: Mapping[str, Field] = {
     "moving[].order": _later("Order of trains"),
     "moving[].spacing": _later("Spacing of trains"),
     "moving[].absent": _later("Absent trains"),
-    "permanent": _later("Permanent loads"),
+    "permanent": _tables("Permanent loads"),
+    "permanent[].name": Field("Permanent load", "name", required=True),
+    "permanent[].uniform": _later("Uniform loads"),
+    "permanent[].points": _later("Point loads"),
+    "permanent[].couples": _later("Couples"),
+    "permanent[].settlements": _tables("Settlements"),
+    "permanent[].settlements[].at": Field(
+        "Support that settles", "place", "x", "its name or its station", required=True
+    ),
+    "permanent[].settlements[].down": Field("Settlement", "deflection", "Δ", "downward"),
+    "permanent[].settlements[].turn": Field("Turn of the support", "rotation", "θ", "clockwise"),
+    "permanent[].stage": _later("Stage"),
+    "permanent[].acts": _later("Way of acting"),
     "stages": _later("Stages"),
     "given": _later("Given effects"),
     "combinations": _later("Combinations"),

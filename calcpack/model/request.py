@@ -118,9 +118,11 @@ class Entry:
 class Calculation:
     """One calc.toml, read and checked.
 
-    ``plain`` is the file as plain JSON data without ``cover`` (for the digest); ``inputs`` gives
-    the exact value of every number a formula may cite, by its path; ``echo`` lists every value;
-    ``text`` is the file as typed; ``redundants`` are None where they are chosen by rule.
+    ``plain`` is the file as plain JSON data without ``cover`` (for the digest); where the file
+    names tables it has a key ``tables`` more, with the SHA-256 of each by its name. ``inputs``
+    gives the exact value of every number a formula may cite, by its path; ``echo`` lists every
+    value; ``text`` is the file as typed; ``redundants`` are None where they are chosen by rule;
+    ``tables`` are the name and the bytes of each table.
     """
 
     units: str
@@ -136,3 +138,4 @@ class Calculation:
     text: str = ""
     redundants: tuple[Effect, ...] | None = None
     permanent: tuple[Permanent, ...] = ()
+    tables: tuple[tuple[str, bytes], ...] = ()

@@ -11,11 +11,18 @@ from calcpack.exact.formula import Symbol
 from calcpack.model.beam import Beam, Face, Release, Station
 from calcpack.model.request import Effect, EffectKind
 
-LETTERS = {"reaction": "R", "moment reaction": "C", "shear": "V", "moment": "M"}
+LETTERS = {
+    "reaction": "R",
+    "moment reaction": "C",
+    "shear": "V",
+    "moment": "M",
+    "deflection": "D",
+    "rotation": "θ",
+}
 
 
 def symbol_of(effect: Effect) -> Symbol:
-    """R a reaction, C the couple of a support (moment reaction), V a shear, M a moment.
+    """R a reaction, C the couple of a support, V a shear, M a moment, D a deflection, θ a rotation.
 
     >>> str(symbol_of(Effect("shear", "B", Fraction(40), "left")))
     'V_B,left'
