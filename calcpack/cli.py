@@ -79,7 +79,7 @@ def _solve(chosen: argparse.Namespace) -> None:
 def _issue(chosen: argparse.Namespace) -> None:
     import nbformat
 
-    from calcpack.export.exporter import issue
+    from calcpack.export.issue import issue
     from calcpack.export.templates import template_folder
 
     own = chosen.folder / "calculation.ipynb"

@@ -1,7 +1,8 @@
-"""Stable determinate beams, their effects, and trains: by hand, at random, and for hypothesis."""
+"""Stable beams, their effects, and trains: by hand, at random, and for hypothesis."""
 
 from __future__ import annotations
 
+import itertools
 import string
 from collections.abc import Sequence
 from fractions import Fraction
@@ -17,32 +18,42 @@ from calcpack.model.beam import (
     ReleaseKind,
     Section,
     Station,
+    Stretch,
     Support,
     SupportKind,
     Typed,
 )
 from calcpack.model.loads import Axle, Heading, MovingLoad
-from calcpack.model.request import Effect
+from calcpack.model.request import Effect, EffectKind
 
 Place = Fraction | int | str
+Held = (
+    tuple[Place, SupportKind]
+    | tuple[Place, SupportKind, Face | None]
+    | tuple[Place, SupportKind, Face | None, Place, Place]
+)
 RESTRAINTS: dict[SupportKind, int] = {"pin": 1, "roller": 1, "fixed": 2, "guided": 1}
 
 
 def make_beam(
     length: Place,
-    supports: Sequence[tuple[Place, SupportKind] | tuple[Place, SupportKind, Face | None]],
+    supports: Sequence[Held],
     releases: Sequence[tuple[Place, ReleaseKind]] = (),
     sections: Sequence[Place] = (),
+    stiffness: Sequence[tuple[Place, Place]] = (),
 ) -> Beam:
     """A beam from plain tuples in order along it: supports A, B, ..., releases r1, ..., sections
-    1, ..., each with the path that a reader would give it."""
+    1, ..., each with the path that a reader would give it.
+
+    A spring's tuple ends with its vertical and its rotational stiffness; a tuple of ``stiffness``
+    is a station and EI from there on.
+    """
+    starts = [Fraction(at) for at, _ in stiffness]
     return Beam(
         Fraction(length),
         tuple(
-            Support(name, Fraction(at), kind, Typed(f"beam.supports[{i}].at"), *face)
-            for i, (name, (at, kind, *face)) in enumerate(
-                zip(string.ascii_uppercase, supports, strict=False)
-            )
+            _support(name, held, f"beam.supports[{i}]")
+            for i, (name, held) in enumerate(zip(string.ascii_uppercase, supports, strict=False))
         ),
         tuple(
             Release(f"r{i + 1}", Fraction(at), kind, Typed(f"beam.releases[{i}].at"))
@@ -53,7 +64,25 @@ def make_beam(
             for i, at in enumerate(sections)
         ),
         Typed("beam.length"),
+        tuple(
+            Stretch(start, end, Fraction(EI), Typed(f"{path}.from"), path)
+            for start, end, (_, EI), path in zip(
+                starts,
+                [*starts[1:], Fraction(length)],
+                stiffness,
+                (f"beam.stiffness[{i}]" for i in itertools.count()),
+                strict=False,
+            )
+        ),
     )
+
+
+def _support(name: str, held: Held, path: str) -> Support:
+    at, kind, *rest = held
+    face: Any = rest[0] if rest else None
+    vertical, rotational = (Fraction(one or 0) for one in rest[1:] or (0, 0))
+    source = Typed(f"{path}.at")
+    return Support(name, Fraction(at), kind, source, face, vertical, rotational, path)
 
 
 def random_beam(rng: Random, releases_up_to: int = 3) -> Beam:
@@ -99,11 +128,80 @@ def _any_beam(rng: Random, count: int) -> Beam:
     return make_beam(length, supports, releases, sections)
 
 
-def is_stable_and_determinate(beam: Beam) -> bool:
-    """Whether the rigid parts between releases can be placed in exactly one way.
+def random_indeterminate(rng: Random) -> Beam:
+    """A stable indeterminate beam of two to five spans: any supports and springs, overhangs, up to
+    three hinges and slides, some of them at a support, EI unknown or in up to seven steps, and two
+    to four sections."""
+    while True:
+        beam = _any_continuous_beam(rng)
+        if is_stable(beam) and degree(beam) > 0:
+            return beam
 
-    The part b has height a_b + t_b x at station x; the conditions are those of the supports and
-    of what each release still passes.
+
+def _any_continuous_beam(rng: Random) -> Beam:
+    spans = [Fraction(rng.randint(30, 300), 10) for _ in range(rng.randint(2, 5))]
+    first, last = (rng.choice((0, 0, Fraction(rng.randint(5, 40), 10))) for _ in range(2))
+    held = [first + sum(spans[:count], Fraction(0)) for count in range(len(spans) + 1)]
+    length = held[-1] + last
+    inside = [at for at in held if 0 < at < length]
+
+    def anywhere() -> Fraction:
+        return rng.randint(1, 999) * length / 1000
+
+    kind_at: dict[Fraction, ReleaseKind] = {
+        rng.choice((anywhere(), rng.choice(inside))): rng.choice(("hinge", "hinge", "slide"))
+        for _ in range(rng.randint(0, 3))
+    }
+    steps = sorted({Fraction(0), *(anywhere() for _ in range(rng.randint(0, 6)))})
+    return make_beam(
+        length,
+        [_any_support(rng, at, 0 < at < length, kind_at.get(at)) for at in held],
+        sorted(kind_at.items()),
+        sorted(anywhere() for _ in range(rng.randint(2, 4))),
+        [(at, rng.randint(500, 90000)) for at in steps] if rng.random() < 0.8 else (),
+    )
+
+
+def _any_support(rng: Random, at: Fraction, inner: bool, release: ReleaseKind | None) -> Held:
+    kinds: tuple[SupportKind, ...] = ("pin", "roller", "roller", "roller", "spring", "spring")
+    kind = rng.choice((*kinds, "fixed", "guided") if inner else (*kinds, *kinds[:2], "fixed"))
+    vertical, rotational = 0, 0
+    if kind == "spring":
+        # In a spring that holds only one way the other stiffness is absent.
+        vertical, rotational = rng.choice(((1, 0), (1, 0), (0, 1), (1, 1)))
+    faces: list[Face | None] = [None]
+    if release:
+        turns = kind in ("fixed", "guided") or rotational
+        faces = ["left", "right"] if turns or release == "slide" else [None]
+    return (
+        at,
+        kind,
+        rng.choice(faces),
+        vertical * Fraction(rng.randint(10, 90000), 10),
+        rotational * Fraction(rng.randint(10, 900000), 10),
+    )
+
+
+def is_stable_and_determinate(beam: Beam) -> bool:
+    """Whether the rigid parts between releases can be placed in exactly one way, with no condition
+    to spare."""
+    return is_stable(beam) and degree(beam) == 0
+
+
+def is_stable(beam: Beam) -> bool:
+    """Whether the rigid parts between releases can be placed in one way only."""
+    return _rank(_conditions(beam)) == 2 * (len(beam.releases) + 1)
+
+
+def degree(beam: Beam) -> int:
+    """Conditions of a stable beam beyond those that place its parts."""
+    return len(_conditions(beam)) - 2 * (len(beam.releases) + 1)
+
+
+def _conditions(beam: Beam) -> list[list[Fraction]]:
+    """What supports, also those that yield, and releases demand of the rigid parts.
+
+    The part b has height a_b + t_b x at station x.
     """
     unknowns = 2 * (len(beam.releases) + 1)
     rows: list[list[Fraction]] = []
@@ -129,7 +227,7 @@ def is_stable_and_determinate(beam: Beam) -> bool:
             condition((one, 1), (one + 1, release.at), (two, -1), (two + 1, -release.at))
         else:
             condition((one + 1, 1), (two + 1, -1))
-    return len(rows) == unknowns == _rank(rows)
+    return rows
 
 
 def _rank(rows: list[list[Fraction]]) -> int:
@@ -150,6 +248,21 @@ def _rank(rows: list[list[Fraction]]) -> int:
 def effects_of(beam: Beam) -> tuple[Effect, ...]:
     """Every effect at every key station, both faces where two values exist, else the single one."""
     return tuple(effect for station in beam.stations for effect in _effects_at(beam, station))
+
+
+def movements_of(beam: Beam) -> tuple[Effect, ...]:
+    """Deflection and rotation at every key station, both faces where two values exist."""
+    effects = []
+    both: tuple[Face | None, ...] = ("left", "right")
+    opened: tuple[tuple[EffectKind, ReleaseKind], ...]
+    opened = ("deflection", "slide"), ("rotation", "hinge")
+    for station in beam.stations:
+        opens = station.release.kind if station.release else None
+        name = station.name or str(station.at)
+        for kind, opening in opened:
+            for face in both if opens == opening else (None,):
+                effects.append(Effect(kind, name, station.at, face))
+    return tuple(effects)
 
 
 def _effects_at(beam: Beam, station: Station) -> list[Effect]:

@@ -22,6 +22,7 @@ RANKS = {
             ("exact",),
             ("model",),
             ("statics",),
+            ("elastic",),
             ("moving",),
             ("second",),
             ("derive",),

@@ -2,27 +2,23 @@
 
 from __future__ import annotations
 
+import copy
 from pathlib import Path
 from typing import Any
 
-from nbconvert.exporters import Exporter
+from nbconvert.exporters.exporter import Exporter
 from nbformat import NotebookNode
-
-from calcpack.errors import InputRefused, Problem
-from calcpack.export.compile import to_pdf
-from calcpack.export.notebook import parts_of
-from calcpack.intake import read_file
-from calcpack.results import results
-from calcpack.sheets.pages import make_sheet
-from calcpack.solution import solve
+from nbformat.v4.rwbase import strip_transient
+from traitlets import default
 
 
 class PackageExporter(Exporter):
     """Rebuilds every sheet from the calc.toml beside the notebook; the notebook gives the order."""
 
-    export_from_notebook = "Calculation package"
+    output_mimetype = "application/pdf"
 
-    def _file_extension_default(self) -> str:
+    @default("file_extension")
+    def _file_extension(self) -> str:
         return ".pdf"
 
     def from_notebook_node(
@@ -30,26 +26,22 @@ class PackageExporter(Exporter):
     ) -> tuple[Any, dict[str, Any]]:
         """The PDF's bytes, and the resources.
 
+        What preprocessors make of the notebook is set aside: they might take cells out of it.
+
         Raises:
             InputRefused: calc.toml or the notebook cannot be issued as it stands.
             Disagreement: a second method differs.
-            OutputFailed: the typesetter refused.
+            OutputFailed: a cell of the engineer's own or the typesetter failed.
         """
-        nb, resources = super().from_notebook_node(nb, resources, **kw)
+        # Every start of nbconvert, to whatever format, loads all exporters: the computing and
+        # the typesetting are loaded only when a package is made.
+        from calcpack.export.issue import issue
+
+        _, resources = super().from_notebook_node(nb, resources, **kw)
+        for kept_apart in ("outputs", "attachments"):  # with either the server sends a zip
+            resources.pop(kept_apart, None)
+        # The server marks the cells that it trusts; a saved notebook holds no such marks, and
+        # the package is the same either way.
+        notebook = strip_transient(copy.deepcopy(nb))
         folder = Path(resources.get("metadata", {}).get("path", ""))
-        return issue(nb, folder), resources
-
-
-def issue(notebook: NotebookNode, folder: Path) -> bytes:
-    """The package of the calculation in ``folder`` as PDF, in the order of ``notebook``."""
-    calculation = read_file(folder / "calc.toml")
-    parts, problems = parts_of(notebook)
-    day = calculation.cover.latest
-    if day is None:
-        needs = "must be a date: it is the date of the document"
-        problems.insert(0, Problem("cover.prepared.on", "absent", needs))
-    if problems or day is None:
-        raise InputRefused(problems)
-    solution = solve(calculation)
-    made = [make_sheet(part, solution) if isinstance(part, str) else part for part in parts]
-    return to_pdf(made, solution, results(solution)["digest"], day)
+        return issue(notebook, folder), resources

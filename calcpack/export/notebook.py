@@ -1,70 +1,143 @@
-"""Reads a calculation's notebook: the order of the sheets and the engineer's own words."""
+"""Reads a calculation's notebook: the order of the sheets and the engineer's own cells."""
 
 from __future__ import annotations
 
 import ast
-from collections.abc import Iterator
+import html
+import warnings
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
 
 from nbformat import NotebookNode
 
 from calcpack.errors import Problem
-from calcpack.sheets.blocks import Framed, Paragraph
+from calcpack.intake.shown import shown
+from calcpack.render.markdown import SHEET_MIME, stamp
+from calcpack.results import DIGEST_SHOWN
+from calcpack.sheets.lettering import has_glyph
 from calcpack.sheets.pages import SHEET_NAMES
 
-OWN = "Engineer's own, not verified by calcpack"
 CALL = 'calcpack.sheet("NAME")'
 
-Part = str | Framed
-"""The name of a sheet, or the engineer's own words."""
+
+@dataclass(frozen=True)
+class SheetCall:
+    """A cell that shows one sheet; None: a sheet that the notebook leaves out."""
+
+    name: str
+    index: int | None
+
+
+@dataclass(frozen=True)
+class OwnCell:
+    """A cell of the engineer's own, by its place in the notebook counted from 0."""
+
+    index: int
+    is_code: bool
+
+
+Part = SheetCall | OwnCell
 
 
 def parts_of(notebook: NotebookNode) -> tuple[list[Part], list[Problem]]:
     """The parts in the notebook's order, and what in it cannot be issued.
 
     Sheets that the notebook leaves out are appended in their usual order, so that no notebook
-    can hide one.
+    can hide one. A cell that only imports calcpack, or is empty, is no part.
     """
     parts: list[Part] = []
     problems: list[Problem] = []
     for index, cell in enumerate(notebook.cells):
-        path = f"calculation.ipynb: cells[{index}]"
-        if cell.cell_type == "markdown":
-            if cell.source.strip():
-                lines = tuple(Paragraph((line,)) for line in cell.source.splitlines() if line)
-                parts.append(Framed(OWN, lines))
-        elif cell.cell_type == "code":
-            for found in _sheets_called(path, cell.source):
-                if isinstance(found, Problem):
-                    problems.append(found)
-                elif found in parts:
-                    problems.append(Problem(path, f"sheet {found!r}", "must stand only once"))
-                else:
-                    parts.append(found)
-    parts += [name for name in SHEET_NAMES if name not in parts]
-    return parts, problems
+        found = _part(cell, index)
+        path = cell_path(index)
+        if isinstance(found, Problem):
+            problems.append(found)
+        elif isinstance(found, SheetCall) and found.name in _names(parts):
+            problems.append(Problem(path, f"sheet {found.name!r}", "must stand only once"))
+        elif found is not None:
+            parts.append(found)
+        if isinstance(found, OwnCell) and cell.cell_type == "markdown":
+            problems += _without_glyph(path, cell.source)
+    left_out = [SheetCall(name, None) for name in SHEET_NAMES if name not in _names(parts)]
+    return parts + left_out, problems
 
 
-def _sheets_called(path: str, source: str) -> Iterator[str | Problem]:
-    try:
-        statements = ast.parse(source).body
-    except SyntaxError:
-        yield Problem(path, "not Python", f"must be a call of {CALL}")
-        return
-    for statement in statements:
-        match statement:
-            case ast.Import(names=[ast.alias(name="calcpack", asname=None)]):
+def forged_outputs(notebook: NotebookNode, parts: Sequence[Part], digest: str) -> list[Problem]:
+    """What says of itself that it is a sheet's output, and is not that of the sheet as computed.
+
+    Args:
+        notebook: whose outputs are looked at.
+        parts: its cells, as ``parts_of`` reads them.
+        digest: of data and results as they are now.
+    """
+    problems = []
+    for part in parts:
+        if part.index is None:
+            continue
+        for place, output in enumerate(notebook.cells[part.index].get("outputs", ())):
+            if SHEET_MIME not in output.get("data", {}):
                 continue
-            case ast.Expr(
-                value=ast.Call(
-                    func=ast.Attribute(value=ast.Name(id="calcpack"), attr="sheet"),
-                    args=[ast.Constant(value=str(name))],
-                    keywords=[],
-                )
-            ):
-                if name in SHEET_NAMES:
-                    yield name
-                else:
-                    listed = ", ".join(SHEET_NAMES)
-                    yield Problem(path, f"sheet {name!r}", f"must be one of {listed}")
-            case _:
-                yield Problem(path, "code of the engineer's own", "not computed by this release")
+            said = output.data[SHEET_MIME]
+            path = f"{cell_path(part.index)}.outputs[{place}]"
+            if isinstance(part, OwnCell):
+                needs = f"must come from {CALL} in a cell of its own"
+                problems.append(Problem(path, "a sheet's output", needs))
+            elif said not in (stamp(part.name, digest), stamp(part.name, None)):
+                due = f"must be of {part.name!r} with digest {digest[:DIGEST_SHOWN]}"
+                problems.append(Problem(path, shown(said), f"{due}: run the cell again"))
+    return problems
+
+
+def cell_path(index: int) -> str:
+    """What messages call a cell."""
+    return f"calculation.ipynb: cells[{index}]"
+
+
+def _names(parts: Sequence[Part]) -> set[str]:
+    return {part.name for part in parts if isinstance(part, SheetCall)}
+
+
+def _part(cell: NotebookNode, index: int) -> Part | Problem | None:
+    if not cell.source.strip():
+        return None
+    if cell.cell_type != "code":
+        return OwnCell(index, is_code=False)
+    try:
+        with warnings.catch_warnings(action="ignore"):  # they are for the kernel to give
+            tree = ast.parse(cell.source)
+    except (SyntaxError, ValueError):  # a line for the kernel, such as %matplotlib inline
+        return OwnCell(index, is_code=True)
+    rest = [one for one in tree.body if not _imports_calcpack(one)]
+    if not any(_is_sheet(node) for node in ast.walk(tree)):
+        return OwnCell(index, is_code=True) if rest or not tree.body else None
+    match rest:
+        case [ast.Expr(ast.Call(func, [ast.Constant(str(name))], []))] if _is_sheet(func):
+            if name in SHEET_NAMES:
+                return SheetCall(name, index)
+            listed = ", ".join(SHEET_NAMES)
+            return Problem(cell_path(index), f"sheet {name!r}", f"must be one of {listed}")
+    needs = f"must be {CALL} and nothing else: a sheet's call stands alone in its cell"
+    return Problem(cell_path(index), shown(cell.source), needs)
+
+
+def _imports_calcpack(statement: ast.stmt) -> bool:
+    match statement:
+        case ast.Import(names=[ast.alias(name="calcpack", asname=None)]):
+            return True
+    return False
+
+
+def _is_sheet(node: ast.AST) -> bool:
+    match node:
+        case ast.Attribute(ast.Name("calcpack"), "sheet"):
+            return True
+    return False
+
+
+def _without_glyph(path: str, source: str) -> Iterator[Problem]:
+    """Markdown may also name a character by its number, hence the text without such names."""
+    text = source + html.unescape(source)
+    missing = [one for one in text if one not in "\n\r\t" and not has_glyph(one)]
+    if missing:
+        needs = f"must do without U+{ord(missing[0]):04X}, which the package's fonts lack"
+        yield Problem(path, shown(source), needs)

@@ -4,11 +4,12 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 from fractions import Fraction
+from pathlib import Path
 
 from calcpack.exact.numbers import LARGEST
 from calcpack.intake.reading import Reading
-from calcpack.intake.shown import readable
-from calcpack.intake.values import alternatives, unit_of
+from calcpack.intake.stiffness import read_stiffness
+from calcpack.intake.values import alternatives, within
 from calcpack.model.beam import (
     Beam,
     Beyond,
@@ -24,6 +25,8 @@ from calcpack.model.beam import (
 WORDS = ("supports", "sections", "tenths")
 """What ``at`` of an effect may say in place of a name; so nothing may be called so."""
 
+_WITHOUT_PLACES = ("beam.stiffness", "beam.redundants")
+
 Stand = tuple[Fraction | None, Source]
 """A station, None while it is not known, and where it comes from."""
 
@@ -37,7 +40,8 @@ class Outline:
         length: the length of the beam, None where it was refused.
         names: every name of a station with its place, None where that was refused.
         named: whether ``names`` misses none, since each name could be read.
-        whole: whether ``beam`` is all that the file states; else more may have been meant.
+        whole: whether the places on ``beam`` are all that the file states; else more may have
+            been meant.
     """
 
     beam: Beam
@@ -47,11 +51,12 @@ class Outline:
     whole: bool
 
 
-def read_beam(reading: Reading) -> Outline:
+def read_beam(reading: Reading, folder: Path | None) -> Outline:
     """Read the beam, or what can be read of it where something is refused.
 
     Length and stations come from ``length`` and each support's ``at``, or from ``spans`` and
-    overhangs. Supports, releases and sections come sorted by station.
+    overhangs. Supports, releases and sections come sorted by station. A table of stiffness is
+    looked for in ``folder``.
     """
     lists = ("beam", "beam.supports", "beam.releases", "beam.sections")
     drawing = _Drawing(reading, named=not any(map(reading.refused, lists)))
@@ -67,8 +72,12 @@ def read_beam(reading: Reading) -> Outline:
         tuple(sorted(drawing.releases.values(), key=lambda release: release.at)),
         tuple(sorted(drawing.sections, key=lambda section: section.at)),
         end,
+        read_stiffness(reading, drawing.length, folder),
     )
-    refused = any(problem.path.startswith("beam") for problem in reading.problems)
+    refused = any(
+        problem.path.startswith("beam") and not problem.path.startswith(_WITHOUT_PLACES)
+        for problem in reading.problems
+    )
     whole = reading.units is not None and not refused
     return Outline(beam, drawing.length, drawing.names, drawing.named, whole)
 
@@ -87,23 +96,36 @@ class _Drawing:
     def read_supports(self) -> Source:
         """Read the supports and the length; the source of the length comes back."""
         reading, paths = self.reading, self.reading.items("beam.supports")
-        kinds = [reading.value(f"{path}.kind") for path in paths]
-        if not reading.refused("beam.supports") and all(kind == "guided" for kind in kinds):
-            needs = "must have a pin, a roller or a fixed support"
+        if not reading.refused("beam.supports") and not any(map(self._may_hold_vertically, paths)):
+            needs = "must have a pin, a roller, a fixed support or a vertical spring"
             reading.refuse("beam.supports", needs, "no vertical support")
         by_spans = reading.given("beam.spans") and not reading.given("beam.length")
         stands, end = self._by_spans(paths) if by_spans else self._by_stations(paths)
         taken: dict[Fraction, str] = {}
         for path, (at, source) in zip(paths, stands, strict=False):
             name, kind = self._claim(path), reading.value(f"{path}.kind")
+            springs = self._springs(path)
+            if kind == "spring" and springs == [0, 0]:
+                reading.refuse(path, "must have vertical or rotational above 0", "no stiffness")
             if by_spans and reading.given(f"{path}.at"):
                 reading.refuse(f"{path}.at", "must be left out: beam.spans places the supports")
             at = self._accepted(path, at, taken)
             if at is not None and name and kind:
-                face = reading.value(f"{path}.face")
                 self.names[name] = at
-                self.supports[path] = Support(name, at, kind, source, face)
+                if kind != "spring" or (None not in springs and any(springs)):
+                    face = reading.value(f"{path}.face")
+                    vertical, rotational = (spring or Fraction(0) for spring in springs)
+                    self.supports[path] = Support(
+                        name, at, kind, source, face, vertical, rotational, path
+                    )
         return end
+
+    def _may_hold_vertically(self, path: str) -> bool:
+        kind = self.reading.value(f"{path}.kind")
+        return kind != "guided" and (kind != "spring" or self._springs(path)[0] != 0)
+
+    def _springs(self, path: str) -> list[Fraction | None]:
+        return [self.reading.value(f"{path}.{key}") for key in ("vertical", "rotational")]
 
     def _by_stations(self, paths: list[str]) -> tuple[list[Stand], Source]:
         reading = self.reading
@@ -222,16 +244,9 @@ class _Drawing:
         if at is None:
             return None
         if length is not None and not (0 < at < length if inside else 0 <= at <= length):
-            self.reading.refuse(path, within(length, self.reading, inside))
+            self.reading.refuse(path, within(length, self.reading.units, inside))
         elif taken.setdefault(at, table) != table:
             self.reading.refuse(path, f"must not share its place with {taken[at]}")
         else:
             return at
         return None
-
-
-def within(length: Fraction, reading: Reading, inside: bool = False) -> str:
-    """What is needed of a station off the beam: to lie on it, or strictly inside it."""
-    unit = unit_of("length", reading.units)
-    ends = (f"{readable(end)} {unit}".rstrip() for end in (Fraction(0), length))
-    return f"must lie {'inside' if inside else 'on the beam,'} {' to '.join(ends)}"

@@ -60,9 +60,7 @@ def parse(data: bytes, source: str) -> dict[str, Any]:
     try:
         text = data.decode("utf-8-sig")
     except UnicodeDecodeError as error:
-        line = error.object[: error.start].count(b"\n") + 1
-        said = f"byte 0x{error.object[error.start]:02x} in line {line}"
-        raise refused(said, "must be UTF-8 text") from None
+        raise refused(undecodable(error), "must be UTF-8 text") from None
     too_deep = refused("tables in tables", f"must be nested at most {DEEPEST} deep")
     if _nested_too_deep(text):
         raise too_deep
@@ -78,6 +76,12 @@ def parse(data: bytes, source: str) -> dict[str, Any]:
     if not document:
         raise refused("empty", "must state format, units, cover and beam")
     return document
+
+
+def undecodable(error: UnicodeDecodeError) -> str:
+    """The byte that is no UTF-8, and its line."""
+    line = error.object[: error.start].count(b"\n") + 1
+    return f"byte 0x{error.object[error.start]:02x} in line {line}"
 
 
 def _nested_too_deep(text: str) -> bool:

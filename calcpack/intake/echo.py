@@ -43,13 +43,16 @@ def inputs(reading: Reading) -> dict[str, Fraction]:
 def echo(reading: Reading) -> tuple[Entry, ...]:
     """A row for each value, typed or default, in the order of the field table.
 
-    An effect is one row; so are the default effects where the file states none.
+    The values of a table of stiffness come after those of the beam. An effect is one row; so are
+    the default effects where the file states none.
     """
     rows: dict[str, list[Entry]] = {key: [] for key in FIELDS}
     for path, found in reading.values.items():
-        said, unit = _said(found), unit_of(found.field.kind, reading.units)
-        row = Entry(path, found.field.label, said, unit, found.entered)
-        rows[path.partition(".")[0].partition("[")[0]].append(row)
+        is_number = isinstance(found.value, Fraction)
+        unit = unit_of(found.field.kind, reading.units) if is_number else ""
+        row = Entry(path, found.field.label, _said(found), unit, found.entered)
+        in_table = path.rpartition("[")[0] in reading.tables
+        rows["beam" if in_table else path.partition(".")[0].partition("[")[0]].append(row)
     rows["effects"] = [_effect(reading, path) for path in reading.items("effects")]
     if not rows["effects"]:
         rows["effects"] = [Entry("effects", "Effects", _DEFAULT_EFFECTS, "", False)]

@@ -7,9 +7,9 @@ from collections.abc import Iterable
 from dataclasses import replace
 from fractions import Fraction
 
-from calcpack.exact.units import looks_like_quantity
-from calcpack.intake.beam import WORDS, Outline, within
-from calcpack.intake.reading import Reading, nearest
+from calcpack.intake.beam import WORDS, Outline
+from calcpack.intake.places import read_place
+from calcpack.intake.reading import Reading
 from calcpack.intake.shown import decimal_text
 from calcpack.intake.values import unit_of
 from calcpack.model.beam import Beam, Face, Section, Support, Tenth, Typed
@@ -18,6 +18,8 @@ from calcpack.model.request import Effect, EffectKind
 MOST_STATIONS = 200
 
 _AT_SUPPORTS = {"reaction": "vertically", "moment reaction": "rotation"}
+
+_OPENED_BY = {"deflection": "slide", "rotation": "hinge"}
 
 
 def read_effects(reading: Reading, outline: Outline) -> tuple[tuple[Effect, ...], Beam]:
@@ -90,24 +92,11 @@ class _Wanted:
 
     def _places(self, path: str) -> tuple[Fraction, ...]:
         """The stations that a place means; none where it is refused or not known."""
-        reading, names = self.reading, self.outline.names
-        place = reading.value(path)
-        if isinstance(place, str):
-            if place in names:
-                place = names[place]
-            elif place in WORDS:
-                return self._group(place, path)
-            elif looks_like_quantity(place):
-                place = reading.read_length(path)
-            else:
-                if self.outline.named:
-                    reading.refuse(path, f"is not a known name; {nearest(place, names, 3)}")
-                return ()
+        word = self.reading.value(path)
+        if word in WORDS:
+            return self._group(word, path)
+        place = read_place(self.reading, self.outline, path)
         if place is None:
-            return ()
-        length = self.outline.length
-        if length is not None and not 0 <= place <= length:
-            reading.refuse(path, within(length, reading))
             return ()
         if place not in self.stations:
             self.sections.setdefault(place, Section("", place, Typed(path)))
@@ -137,6 +126,14 @@ class _Wanted:
             return False
         return support.holds_vertical if kind in ("reaction", "shear") else support.holds_rotation
 
+    def _jumps(self, kind: EffectKind, at: Fraction) -> bool:
+        """Whether the effect has two values there, if that is inside the beam."""
+        if kind in ("shear", "moment"):
+            return self._holds(kind, at)
+        station = self.stations.get(at)
+        release = station.release if station else None
+        return release is not None and _OPENED_BY[kind] == release.kind
+
     def _held(
         self, kind: EffectKind, path: str, stations: tuple[Fraction, ...]
     ) -> tuple[Fraction, ...]:
@@ -162,11 +159,11 @@ class _Wanted:
 
     def _effects(self, kind: EffectKind, at: Fraction, side: Face | None) -> list[Effect]:
         faces: tuple[Face | None, ...] = (None,)
-        # A support that could not be read may stand anywhere: then each place may have two faces.
+        # What could not be read of the beam may stand anywhere: then each place may have two faces.
         if (
             kind not in _AT_SUPPORTS
             and 0 < at < self.beam.length
-            and (self._holds(kind, at) or not self.outline.whole)
+            and (self._jumps(kind, at) or not self.outline.whole)
         ):
             faces = (side,) if side else ("left", "right")
         name = self._called(at)

@@ -18,14 +18,11 @@ _HEADINGS: dict[str, tuple[Heading, ...]] = {
 
 
 def read_moving(reading: Reading) -> tuple[MovingLoad, ...]:
-    """Every moving load; names are unique among them, and 1,000 axles are the most in all."""
-    taken: dict[str, str] = {}
+    """Every moving load; 1,000 axles are the most in all."""
     axles_before = 0
     loads = []
     for path in reading.items("moving"):
         name = reading.value(f"{path}.name")
-        if name is not None and taken.setdefault(name, path) != path:
-            reading.refuse(f"{path}.name", f"must differ from the name at {taken[name]}.name")
         count = len(reading.items(f"{path}.axles"))
         if max(axles_before, count) <= MOST_AXLES < axles_before + count:
             needs = f"must leave at most {MOST_AXLES:,} axles in all"
@@ -33,6 +30,15 @@ def read_moving(reading: Reading) -> tuple[MovingLoad, ...]:
         axles_before += count
         loads.append(_load(reading, path, name))
     return tuple(loads)
+
+
+def check_names(reading: Reading) -> None:
+    """Names are unique among moving and permanent loads together."""
+    taken: dict[str, str] = {}
+    for path in (*reading.items("moving"), *reading.items("permanent")):
+        name = reading.value(f"{path}.name")
+        if name is not None and taken.setdefault(name, path) != path:
+            reading.refuse(f"{path}.name", f"must differ from the name at {taken[name]}.name")
 
 
 def _load(reading: Reading, path: str, name: str) -> MovingLoad:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import difflib
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
 from typing import Any
@@ -17,6 +17,27 @@ from calcpack.model.fields import KEYS, Field, field_at, pattern_of
 
 LONGEST_LIST = 1000
 LONGEST_LISTED = 20
+
+
+@dataclass(frozen=True)
+class Row:
+    """A row of a table, read as the item of a list that it stands for.
+
+    Attributes:
+        path: what its values are cited by, such as ``stiffness.csv[0]``.
+        called: what messages call it, such as ``stiffness.csv: row 2``.
+        named_at: the path of the key that names the table.
+        pattern: that of the items it stands for, such as ``beam.stiffness[]``.
+        cells: what stands in it, by key; empty cells are left out.
+        columns: what the table calls a key.
+    """
+
+    path: str
+    called: str
+    named_at: str
+    pattern: str
+    cells: Mapping[str, Any]
+    columns: Mapping[str, str]
 
 
 @dataclass(frozen=True)
@@ -41,6 +62,10 @@ class Reading:
         self.units = units if isinstance(units, str) and units in SYSTEMS else None
         self.values: dict[str, Value] = {}
         self.problems: list[Problem] = []
+        self.tables: dict[str, bytes] = {}
+        """The bytes of each table that was read, by its name."""
+        self._rows: dict[str, Row] = {}
+        self._faulty: dict[str, Row] = {}
         self._raw = dict(_places(document))
         self._read_table(document, "")
 
@@ -59,7 +84,7 @@ class Reading:
 
     def lacks(self, path: str) -> bool:
         """Whether a table stands there in the file that does not state this key."""
-        return not self.given(path) and isinstance(self._raw.get(path.rpartition(".")[0]), dict)
+        return not self.given(path) and isinstance(self._raw.get(path.rpartition(".")[0]), Mapping)
 
     def items(self, path: str) -> list[str]:
         """The paths of a list's items, or of the one value of a field that may have several."""
@@ -70,7 +95,32 @@ class Reading:
 
     def refuse(self, path: str, needs: str, said: str | None = None) -> None:
         """Note a problem; without ``said`` the value itself is shown, with its unit."""
-        self.problems.append(Problem(path, self.said(path) if said is None else said, needs))
+        called = self.called(path)
+        if row := self._row(path):
+            self._faulty[called] = row
+        self.problems.append(Problem(called, self.said(path) if said is None else said, needs))
+
+    def called(self, path: str) -> str:
+        """What messages call a path: itself, or the row and the column of a table."""
+        row = self._row(path)
+        if row is None:
+            return path
+        key = path.removeprefix(row.path).removeprefix(".")
+        return f"{row.called}, {row.columns.get(key, key)}" if key else row.called
+
+    def read_row(self, row: Row) -> None:
+        """Read a row of a table key by key, as an item of its list would be."""
+        self._rows[row.path] = row
+        self._raw[row.path] = row.cells
+        self._raw |= {f"{row.path}.{key}": raw for key, raw in row.cells.items()}
+        self._read_table(row.cells, row.path)
+
+    def _row(self, path: str) -> Row | None:
+        return self._rows.get(path) or self._rows.get(path.rpartition(".")[0])
+
+    def _pattern(self, path: str) -> str:
+        row = self._row(path)
+        return pattern_of(path) if row is None else row.pattern + path.removeprefix(row.path)
 
     def said(self, path: str) -> str:
         """What stands at a path, in one short line.
@@ -80,7 +130,7 @@ class Reading:
         """
         if not self.given(path):
             return "absent"
-        raw, field = self._raw[path], field_at(path)
+        raw, field = self._raw[path], field_at(self._pattern(path))
         if field and isinstance(raw, int | DecimalText) and not isinstance(raw, bool):
             return f"{shown(typed(raw))} {unit_of(field.kind, self.units)}".rstrip()
         return shown(raw)
@@ -97,41 +147,43 @@ class Reading:
 
         Raises:
             InputRefused: with all of them, in the order in which their paths stand in the file;
-                what is absent comes just after the table that lacks it begins.
+                what is absent comes just after the table that lacks it begins, and what is in a
+                table beside the file, row by row, where that is named.
         """
         order = {path: place for place, path in enumerate(self._raw)}
 
-        def place(problem: Problem) -> int:
-            path = problem.path
+        def place(problem: Problem) -> tuple[int, int]:
+            row = self._faulty.get(problem.path)
+            path = row.named_at if row else problem.path
             while path and path not in order:
                 path = path[: max(path.rfind("."), path.rfind("["), 0)]
-            return order.get(path, -1)
+            return order.get(path, -1), order[row.path] if row else -1
 
         if self.problems:
             raise InputRefused(sorted(self.problems, key=place))
 
-    def _read_table(self, table: dict[str, Any], path: str) -> None:
-        fields = KEYS[pattern_of(path)]
+    def _read_table(self, table: Mapping[str, Any], path: str) -> None:
+        fields = KEYS[self._pattern(path)]
         for key in table:
             if key not in fields:
                 known = f"is not a known key; {nearest(key, fields, 1)}"
                 self.refuse(joined(path, key), known)
         for key, field in fields.items():
-            self._read_key(field, joined(path, key), table, table.get(key))
+            self._read_key(field, joined(path, key), table.get(key))
 
-    def _read_key(self, field: Field, path: str, table: dict[str, Any], raw: Any) -> None:
+    def _read_key(self, field: Field, path: str, raw: Any) -> None:
         if raw is None:
             if field.kind == "table" and field.form == "one" and field.computed:
                 self._read_table({}, path)
             elif field.required:
                 choices = field.kind == "choice" and alternatives(field.choices)
                 self.refuse(path, f"must be {choices or 'given'}")
-            elif field.default is not None and field.computed and _has(table, field.beside):
+            elif field.default is not None and field.computed and self._meant(field, path):
                 self._store(path, field, field.default, False)
         elif not field.computed:
             if raw != field.default:
                 self.refuse(path, "not computed by this release")
-        elif not _has(table, field.beside):
+        elif not self._meant(field, path):
             self.refuse(path, f"must be left out without {field.beside}")
         elif field.form == "one" or (field.form == "several" and not isinstance(raw, list)):
             self._read_item(field, path, raw)
@@ -144,6 +196,14 @@ class Reading:
         else:
             for index, item in enumerate(raw):
                 self._read_item(field, f"{path}[{index}]", item)
+
+    def _meant(self, field: Field, path: str) -> bool:
+        """Whether the table states what the field has no meaning without, as far as is known."""
+        key, _, word = field.beside.partition(" = ")
+        beside = joined(path.rpartition(".")[0], key)
+        if word:
+            return self.value(beside) in (None, word.strip('"'))
+        return not key or self.given(beside)
 
     def _read_item(self, field: Field, path: str, raw: Any) -> None:
         if any(
@@ -183,10 +243,6 @@ def nearest(word: str, known: Iterable[str], most: int) -> str:
     start = "known are" if not matches else "nearest is" if len(matches) == 1 else "nearest are"
     listed = ", ".join(repr(match) for match in matches or known[:LONGEST_LISTED])
     return f"{start} {listed}{' and more' * (not matches and len(known) > LONGEST_LISTED)}"
-
-
-def _has(table: dict[str, Any], beside: str) -> bool:
-    return not beside or beside in table
 
 
 def _places(value: Any, path: str = "") -> Iterator[tuple[str, Any]]:

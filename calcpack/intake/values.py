@@ -8,9 +8,9 @@ from fractions import Fraction
 from typing import Any
 
 from calcpack.exact.numbers import LARGEST, SMALLEST, read_decimal
-from calcpack.exact.units import SYSTEMS, read_quantity
+from calcpack.exact.units import SYSTEMS, example_of, read_quantity
 from calcpack.intake.document import DecimalText
-from calcpack.intake.shown import unprintable
+from calcpack.intake.shown import readable, unprintable
 from calcpack.model.fields import Field
 
 LONGEST = {"place": 60, "name": 60, "text": 200, "long text": 1000}
@@ -72,6 +72,25 @@ def unit_of(kind: str, units: str | None) -> str:
     return SYSTEMS[units].get("length" if kind == "place" else kind, "") if units else ""
 
 
+def amount(value: Fraction, kind: str, units: str | None) -> str:
+    """A value in the file's unit as messages have it.
+
+    >>> amount(Fraction(1, 3), "length", "SI")
+    '1/3 ≈ 0.3333 m'
+    """
+    return f"{readable(value)} {unit_of(kind, units)}".rstrip()
+
+
+def within(length: Fraction, units: str | None, inside: bool = False) -> str:
+    """What is needed of a station off the beam: to lie on it, or strictly inside it.
+
+    >>> within(Fraction(12), "SI")
+    'must lie on the beam, 0 m to 12 m'
+    """
+    ends = (amount(end, "length", units) for end in (Fraction(0), length))
+    return f"must lie {'inside' if inside else 'on the beam,'} {' to '.join(ends)}"
+
+
 def alternatives(choices: tuple[str | int, ...]) -> str:
     """Choices as a sentence has them.
 
@@ -99,8 +118,7 @@ def _text(raw: Any, field: Field) -> str:
 
 
 def _number(raw: Any, kind: str, units: str | None) -> Fraction | None:
-    example = f"2.5 {unit_of(kind, units)}".strip()
-    needs = f"must be a {kind} such as {example}"
+    needs = example_of(kind, unit_of(kind, units))
     if isinstance(raw, DecimalText):
         return read_decimal(raw.text)
     if isinstance(raw, int) and not isinstance(raw, bool):

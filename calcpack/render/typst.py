@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import json
 import re
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
@@ -9,6 +10,7 @@ from dataclasses import dataclass, field
 from calcpack.derive.steps import Derivation, Step, number_text
 from calcpack.exact.formula import PLAIN, Leaf, Notation, Symbol, Variable, symbols, write
 from calcpack.render.svg import to_svg
+from calcpack.render.tex import tex_to_typst
 from calcpack.sheets.blocks import (
     Beside,
     Block,
@@ -20,20 +22,23 @@ from calcpack.sheets.blocks import (
     Framed,
     Heading,
     Inline,
+    Items,
     Paragraph,
+    Picture,
     Preformatted,
     Reference,
     Sheet,
     Signatures,
+    Styled,
     Table,
+    Tex,
     Text,
     Value,
 )
 from calcpack.sheets.lettering import has_glyph
 
-LONGEST_WORD = 16
-"""A longer word may be broken, after so many characters a piece."""
-_PIECES = re.compile("." * 10 + "|.+")
+WIDEST = 24
+"""A column without a share of its own gets one if a cell in it takes more characters of source."""
 
 IN_MATH = Notation(
     plus=" + ",
@@ -44,7 +49,7 @@ IN_MATH = Notation(
     quotient="frac({}, {})",
     groups_quotient=False,
 )
-IN_LINE = Notation(times=" thin ", quotient="{} \\/ {}")
+IN_LINE = Notation(times=" dot.op ", group="\\({}\\)", quotient="{} \\/ {}")
 IN_DIGITS = Notation(" + ", " − ", "−", " × ", "({})", "{} ÷ {}")
 
 
@@ -95,9 +100,19 @@ class _Writer:
                 yield f"#calc-contents({literal(revision)})"
             case Preformatted(text):
                 yield f"#calc-preformatted({literal(printable(text))})"
+            case Items(items, start):
+                yield f"#calc-items({'none' if start is None else start},"
+                for item in items:
+                    yield from ("[", *(line for one in item for line in self.block(one)), "],")
+                yield ")"
+            case Picture(content, kind, alt):
+                # As numbers, for the typesetter takes no file in memory that is not UTF-8.
+                name = f"picture-{len(self.files) + 1}.json"
+                self.files[name] = json.dumps(list(content)).encode()
+                yield f"#calc-picture({literal(name)}, {literal(kind)}, {literal(alt)})"
 
     def _table(self, table: Table) -> Iterator[str]:
-        widths = ", ".join(f"{c.width}fr" if c.width else "auto" for c in table.columns)
+        widths = ", ".join(self._width(table, number) for number in range(len(table.columns)))
         aligns = ", ".join(column.align for column in table.columns)
         head = "".join(f"{literal(column.title)}, " for column in table.columns)
         if not any(column.title for column in table.columns):
@@ -108,15 +123,27 @@ class _Writer:
             yield "  " + ", ".join(f"[{self.text(cell)}]" for cell in row) + ","
         yield ")"
 
+    def _width(self, table: Table, number: int) -> str:
+        """A column's share as asked for; else what its cells need, unless one of them is long."""
+        width = table.columns[number].width
+        cells = (row[number] for row in table.rows)
+        texts = (part for cell in cells for part in cell if isinstance(part, str | Value))
+        narrow = all(len(self._inline(part)) <= WIDEST for part in texts)
+        return f"{width}fr" if width else "auto" if narrow else "1fr"
+
     def text(self, text: Text) -> str:
         return "".join(self._inline(part) for part in text)
 
     def _inline(self, part: Inline) -> str:
         match part:
             case str():
-                return f"#{literal(breakable(part))};" if part else ""
+                return f"#{literal(part)};" if part else ""
             case Reference(group, text):
                 return f"#calc-reference({group}, {literal(text)});"
+            case Styled(text, style):
+                return f"#calc-{style}[{self.text(text)}];"
+            case Tex(source, display):
+                return _own_formula(source, display)
             case Symbol():
                 return _equation(_symbol(part), str(part))
             case Value(value, decimals, unit):
@@ -134,10 +161,12 @@ class _Writer:
 
 
 def to_typst(parts: Sequence[Sheet | Block], derivation: Derivation) -> Source:
-    """The body of the package; the template gives the functions that it calls."""
+    """The body of the package, without empty sheets; the template gives the functions it calls."""
     writer = _Writer(derivation)
     lines = []
     for part in parts:
+        if isinstance(part, Sheet) and not part.blocks:
+            continue
         if isinstance(part, Sheet):
             lines.append(f"#calc-sheet({literal(part.title)})")
         for block in part.blocks if isinstance(part, Sheet) else (part,):
@@ -153,17 +182,6 @@ def printable(text: str) -> str:
     """
     return "".join(
         one if one in "\n\t" or has_glyph(one) else f"⟨U+{ord(one):04X}⟩" for one in text
-    )
-
-
-def breakable(text: str) -> str:
-    """The text with places to break its long words, so that no cell is overrun.
-
-    >>> breakable("short words stay") == "short words stay", len(breakable("x" * 60))
-    (True, 65)
-    """
-    return re.sub(
-        rf"\S{{{LONGEST_WORD},}}", lambda word: "\u200b".join(_PIECES.findall(word[0])), text
     )
 
 
@@ -183,12 +201,22 @@ def literal(text: str) -> str:
 
 def _statement(step: Step) -> str:
     right = write(step.formula, IN_MATH, _math_leaf)
-    left = f"sum {_symbol(step.left)}" if step.balance else _symbol(step.left)
+    summed = step.left.letter.startswith("Σ")
+    left = f"sum {_symbol(step.left)}" if summed else _symbol(step.left)
     return _equation(f"{left} = {right}" + " = 0" * step.balance, step.symbols)
 
 
 def _equation(math: str, words: str) -> str:
     return f"#calc-math({literal(words)}, $ {math} $);"
+
+
+def _own_formula(source: str, display: bool) -> str:
+    """A formula in TeX; what lies outside the subset is shown as typed, never guessed."""
+    math = tex_to_typst(source)
+    if math is None:
+        mark = "$$" if display else "$"
+        return f"#calc-code[#{literal(mark + source + mark)};];"
+    return f"#calc-{'display' if display else 'math'}({literal(source)}, $ {math} $);"
 
 
 def _math_leaf(leaf: Leaf | Variable) -> str:
@@ -197,6 +225,8 @@ def _math_leaf(leaf: Leaf | Variable) -> str:
 
 def _symbol(symbol: Symbol) -> str:
     letter = symbol.letter.removeprefix("Σ")
+    if len(letter) > 1:
+        letter = f"italic({literal(letter)})"
     index = ",".join(part for part in (symbol.index, symbol.face) if part)
     math = f"{letter}_{literal(index)}" if index else letter
     return f"{math} ({literal(symbol.place)})" if symbol.place else math

@@ -1,41 +1,95 @@
-"""Influence lines of a determinate beam as displaced shapes: no force is ever solved for."""
+"""Influence lines as shapes of the beam: no load is moved along it, all in exact fractions."""
 
 from __future__ import annotations
 
 import itertools
 from bisect import bisect
 from collections.abc import Sequence
-from dataclasses import dataclass
 from fractions import Fraction
+from math import gcd, lcm
+from typing import Literal, NamedTuple
 
 from calcpack.errors import ProgramFault
 from calcpack.exact.linear import Row, solve
-from calcpack.exact.piecewise import Piecewise
+from calcpack.exact.piecewise import Coefficients, Piecewise
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect, EffectKind
+from calcpack.second.bending import stiffness_after
 from calcpack.second.faces import face_or_inner
 
+State = tuple[Fraction, ...]
+"""Of a shape at a place: height (upward +), slope, and the couple (as the slope +) and the force
+(as the height +) of everything that acts on the beam left of it. EI times the slope's rate is
+minus the couple; the couple's rate is minus the force."""
+
+HEIGHT, SLOPE, COUPLE, FORCE = range(4)
+
+PARTNER = (FORCE, COUPLE, SLOPE, HEIGHT)
+"""What a joint holds where another part of the state may jump: where the height jumps, as at a
+slide, there is no force; where the force jumps, as at a support, the height is held."""
+
+JUMPS: dict[EffectKind, tuple[int, int]] = {
+    "shear": (HEIGHT, 1),
+    "moment": (SLOPE, -1),
+    "deflection": (FORCE, 1),
+    "rotation": (COUPLE, 1),
+}
+"""What is put on the beam at a cut: the part of the state, and its value right less left."""
+
+LEFT_CUT, RELEASE_FIRST, SUPPORT, RELEASE_LAST, STEP, RIGHT_CUT = range(6)
+"""The order at one station; a release comes first where the support holds its right face."""
+
+UNITS: tuple[State, ...] = tuple(
+    tuple(Fraction(part == other) for other in range(4)) for part in range(4)
+)
 Place = tuple[Fraction, int]
-"""Station, and rank at it: a release first where the support holds its right face, then the cut
-at the left face, the support, the cut at the right face, else the release."""
-
-RELEASE_FIRST, LEFT_CUT, SUPPORT, RIGHT_CUT, RELEASE_LAST = range(-2, 3)
-
-# Height and slope that open at a cut, right of it against left of it.
-OPENINGS: dict[EffectKind, tuple[int, int]] = {"shear": (1, 0), "moment": (0, -1)}
+Pair = tuple[State, State]
+Weights = tuple[int, int]
 
 
-@dataclass(frozen=True)
-class _Condition:
-    """A condition on the rigid parts: unknowns 2k and 2k + 1 are the height at station 0 and the
-    slope of part k (of its stretch left of a cut). ``part`` lies before the place, ``is_slope``
-    says what the condition is about, ``restraint`` which reaction yields there."""
+class _Joint(NamedTuple):
+    """Where the part ``jump`` of the state may jump; None at a step of EI.
 
-    row: Row
+    The partner there plus ``gives`` times the jump is 0, or 1 for the effect ``restraint``.
+    """
+
     place: Place
-    part: int
-    is_slope: bool
+    jump: int | None = None
+    gives: Fraction = Fraction(0)
     restraint: EffectKind | None = None
+
+
+class _Stretch(NamedTuple):
+    """The beam between neighbouring joints; of no length where they share a station."""
+
+    start: Fraction
+    end: Fraction
+    flexibility: Fraction
+
+    @property
+    def length(self) -> Fraction:
+        return self.end - self.start
+
+
+class _Family(NamedTuple):
+    """Per stretch, two shapes whose sums are all that meet every condition beyond its one end.
+
+    Attributes:
+        pairs: the states of the two at that end.
+        ratios: per joint; a of the first and b of the second continue beyond it as b times these
+            of the two there, or as a and b where there are none.
+    """
+
+    pairs: list[Pair]
+    ratios: list[Weights | None]
+
+
+class _Cubics(NamedTuple):
+    """Two shapes on one stretch: whole coefficients, lowest power first, over a ``bottom``."""
+
+    one: list[int]
+    two: list[int]
+    bottom: int
 
 
 def influence_line(beam: Beam, effects: Sequence[Effect]) -> tuple[Piecewise, ...]:
@@ -43,71 +97,109 @@ def influence_line(beam: Beam, effects: Sequence[Effect]) -> tuple[Piecewise, ..
 
     Displace the beam by one unit at the quantity alone: for a reaction lift the support, for a
     moment reaction turn it anticlockwise, for a shear lift the part right of the cut against the
-    left, for a moment let a kink point upwards. Keep every other condition, and bend nothing: then
-    only the quantity and the load do work, so the displaced shape, upward +, is the line. One
-    linear system, of two unknowns per part between releases, serves all effects.
+    left, for a moment let a kink point upwards. Keep every other condition: then only the quantity
+    and the load do work, so the displaced shape, upward +, is the line. A determinate beam moves
+    in rigid parts, any other bends. For a deflection or a rotation, put a unit force or couple on
+    the beam instead; the shape, downward +, is the line.
+
+    The shapes that meet every condition left of a cut are the sums of two, and so are those that
+    meet every condition right of it. Both pairs are carried inward from the ends of the beam, and
+    four equations at the cut tell how much of each there is.
 
     Args:
-        beam: determinate and stable.
+        beam: stable; EI = 1 where its stiffness is unknown.
         effects: a face where two values exist.
 
     Returns:
-        Per effect a line of degree 1 at most, positive where the unit downward load makes the
-        effect positive; pure numbers for reaction and shear, lengths for the moments. At a jump
-        the left value is that of the load just left of it: at the cut of a shear, at a slide.
+        Per effect a line of degree 3 at most (1 for the forces of a determinate beam), positive
+        where the unit downward load makes the effect positive; pure numbers for reaction and
+        shear, lengths for the moments, a length and rad per unit force for deflection and
+        rotation. At a jump the left value is that of the load just left of it: at the cut of a
+        shear, at a slide.
 
     Raises:
-        ProgramFault: the beam is not determinate and stable.
+        ProgramFault: the beam is not stable.
 
-    Source: H. Müller-Breslau's principle, for rigid-body displacements.
+    Source: H. Müller-Breslau's principle; reciprocity after J. C. Maxwell and E. Betti; the state
+    is carried as in the method of transfer matrices.
     """
-    joints = _release_places(beam)
-    conditions = _conditions(beam, joints)
-    unknowns = 2 * (len(joints) + 1)
-    if len(conditions) != unknowns:
-        raise ProgramFault(f"{len(conditions)} conditions for {unknowns} displacements")
-    sides: list[Row] = [
-        {row: _imposed(effect, one, joints) for row, one in enumerate(conditions)}
-        for effect in effects
-    ]
     try:
-        shapes = solve([one.row for one in conditions], unknowns, sides)
+        shapes = _Shapes(beam)
+        return tuple(shapes.line(effect) for effect in effects)
     except ZeroDivisionError:
         raise ProgramFault("the beam moves without bending: it has no influence lines") from None
-    return tuple(
-        _line(beam, effect, shape, joints) for effect, shape in zip(effects, shapes, strict=True)
-    )
 
 
-def _release_places(beam: Beam) -> list[Place]:
-    places = []
-    for release in beam.releases:
-        support = beam.station(release.at).support
-        first = support is not None and support.face == "right"
-        places.append((release.at, RELEASE_FIRST if first else RELEASE_LAST))
-    return places
+class _Shapes:
+    """The beam's shapes between joints, from both of its ends."""
 
+    def __init__(self, beam: Beam) -> None:
+        self.joints = _joints(beam)
+        self.places = [joint.place for joint in self.joints]
+        stops = [Fraction(0), *(at for at, _ in self.places), beam.length]
+        self.stretches = [
+            _Stretch(start, end, 1 / stiffness_after(beam, start))
+            for start, end in itertools.pairwise(stops)
+        ]
+        self.left = _family(self.stretches, self.joints, 1)
+        pairs, ratios = _family(self.stretches[::-1], self.joints[::-1], -1)
+        self.right = _Family(pairs[::-1], ratios[::-1])
+        self.on_left = list(map(_cubics, self.left.pairs, self.stretches))
+        starts = (
+            _carried(pair, one, -one.length)
+            for pair, one in zip(self.right.pairs, self.stretches, strict=True)
+        )
+        self.on_right = list(map(_cubics, starts, self.stretches))
 
-def _conditions(beam: Beam, joints: Sequence[Place]) -> list[_Condition]:
-    """What supports and releases hold, ordered along the beam."""
-    one = Fraction(1)
-    found = []
-    for support in beam.supports:
-        place = (support.at, SUPPORT)
-        part = bisect(joints, place)
-        height: Row = {2 * part: one, 2 * part + 1: support.at}
-        if support.holds_vertical:
-            found.append(_Condition(height, place, part, False, "reaction"))
-        if support.holds_rotation:
-            found.append(_Condition({2 * part + 1: one}, place, part, True, "moment reaction"))
-    for part, (place, release) in enumerate(zip(joints, beam.releases, strict=True)):
-        before, after = 2 * part, 2 * part + 2
-        if release.kind == "hinge":
-            row = {before: one, before + 1: release.at, after: -one, after + 1: -release.at}
+    def line(self, effect: Effect) -> Piecewise:
+        """The shape for a unit displacement, force or couple at an effect."""
+        at, lifted = effect.station, None
+        if effect.kind in JUMPS:
+            before = after = bisect(self.places, _cut(effect))
         else:
-            row = {before + 1: one, after + 1: -one}
-        found.append(_Condition(row, place, part, release.kind == "slide"))
-    return sorted(found, key=lambda condition: condition.place)
+            restraints = [(joint.restraint, joint.place[0]) for joint in self.joints]
+            before = restraints.index((effect.kind, at))
+            lifted, after = self.joints[before], before + 1
+        first, last = self.stretches[before], self.stretches[after]
+        left = _carried(self.left.pairs[before], first, at - first.start)
+        right = _carried(self.right.pairs[after], last, at - last.end)
+        (a, b, c, d), bottom = _whole(_met(effect, left, right, lifted))
+        back = itertools.accumulate(self.left.ratios[:before][::-1], _beyond, initial=(a, b))
+        on = itertools.accumulate(self.right.ratios[after:], _beyond, initial=(c, d))
+        cubics = [_cubics(right, last), *self.on_right[after + 1 :]]
+        parts = [
+            (one.start, min(one.end, at), _cubic(shapes, weights, bottom))
+            for one, shapes, weights in zip(
+                self.stretches, self.on_left, list(back)[::-1], strict=False
+            )
+        ]
+        parts += [
+            (max(one.start, at), one.end, _cubic(shapes, weights, bottom))
+            for one, shapes, weights in zip(self.stretches[after:], cubics, on, strict=True)
+        ]
+        return Piecewise.from_pieces(parts)
+
+
+def _joints(beam: Beam) -> list[_Joint]:
+    """Supports, releases and steps of EI in order along the beam."""
+    joints = [_Joint((stretch.start, STEP)) for stretch in beam.stiffness]
+    for support in beam.supports:
+        place = support.at, SUPPORT
+        if support.holds_vertical:
+            joints.append(_Joint(place, FORCE, _gives(support.vertical), "reaction"))
+        if support.holds_rotation:
+            joints.append(_Joint(place, COUPLE, _gives(support.rotational), "moment reaction"))
+    for release in beam.releases:
+        support_there = beam.station(release.at).support
+        first = support_there is not None and support_there.face == "right"
+        place = release.at, RELEASE_FIRST if first else RELEASE_LAST
+        joints.append(_Joint(place, SLOPE if release.kind == "hinge" else HEIGHT))
+    return sorted(joints, key=lambda joint: joint.place)
+
+
+def _gives(stiffness: Fraction) -> Fraction:
+    """What a support gives under a unit force: nothing where it has no spring."""
+    return 1 / stiffness if stiffness else Fraction(0)
 
 
 def _cut(effect: Effect) -> Place:
@@ -115,32 +207,93 @@ def _cut(effect: Effect) -> Place:
     return effect.station, LEFT_CUT if face == "left" else RIGHT_CUT
 
 
-def _imposed(effect: Effect, condition: _Condition, joints: Sequence[Place]) -> Fraction:
-    """The right-hand side of a condition for the unit displacement at an effect."""
-    if effect.kind not in OPENINGS:
-        yields = condition.restraint == effect.kind and condition.place[0] == effect.station
-        return Fraction(yields)
-    cut = _cut(effect)
-    if condition.part != bisect(joints, cut) or condition.place < cut:
-        return Fraction(0)
-    height, slope = OPENINGS[effect.kind]
-    if condition.is_slope:
-        return Fraction(-slope)
-    return -height - slope * (condition.place[0] - effect.station)
+def _family(
+    stretches: Sequence[_Stretch], joints: Sequence[_Joint], onward: Literal[1, -1]
+) -> _Family:
+    """Walk from a free end of the beam, rightward or leftward, past every joint."""
+    pair = UNITS[HEIGHT], UNITS[SLOPE]
+    pairs, ratios = [pair], []
+    for stretch, joint in zip(stretches, joints, strict=False):
+        pair, ratio = _past(joint, _carried(pair, stretch, onward * stretch.length), onward)
+        pairs.append(pair)
+        ratios.append(ratio)
+    return _Family(pairs, ratios)
 
 
-def _line(
-    beam: Beam, effect: Effect, shape: Sequence[Fraction], joints: Sequence[Place]
-) -> Piecewise:
-    ends = [Fraction(0), *(at for at, _ in joints), beam.length]
-    cut_part = bisect(joints, _cut(effect)) if effect.kind in OPENINGS else None
-    pieces = []
-    for part, (start, end) in enumerate(itertools.pairwise(ends)):
-        height, slope = shape[2 * part], shape[2 * part + 1]
-        if part == cut_part:
-            middle, (step, kink) = effect.station, OPENINGS[effect.kind]
-            pieces.append((start, middle, (height + slope * start, slope)))
-            pieces.append((middle, end, (height + slope * middle + step, slope + kink)))
-        else:
-            pieces.append((start, end, (height + slope * start, slope)))
-    return Piecewise.from_pieces(pieces)
+def _past(joint: _Joint, pair: Pair, onward: int) -> tuple[Pair, Weights | None]:
+    """The pair past a joint: the jump is as large as the partner lets it be."""
+    if joint.jump is None:
+        return pair, None
+    jump, (one, two) = UNITS[joint.jump], pair
+    first, second = (state[PARTNER[joint.jump]] for state in pair)
+    if joint.gives:
+        share = -onward / joint.gives
+        return (_sum(1, one, share * first, jump), _sum(1, two, share * second, jump)), None
+    (a, b), _ = _whole((second, -first))
+    divisor = gcd(a, b)  # 0 where the jump by itself meets every condition
+    ratio = a // divisor, b // divisor
+    return (jump, _sum(ratio[0], one, ratio[1], two)), ratio
+
+
+def _beyond(weights: Weights, ratio: Weights | None) -> Weights:
+    return weights if ratio is None else (weights[1] * ratio[0], weights[1] * ratio[1])
+
+
+def _met(effect: Effect, left: Pair, right: Pair, lifted: _Joint | None) -> list[Fraction]:
+    """How much of both left and both right shapes meets where the effect is."""
+    states = [*(_sum(-1, state, 0, state) for state in left), *right]
+    rows: list[Row] = [dict(enumerate(parts)) for parts in zip(*states, strict=True)]
+    if lifted is None:
+        part, value = JUMPS[effect.kind]
+        return solve(rows, 4, [{part: Fraction(value)}])[0]
+    assert lifted.jump is not None
+    row = {column: lifted.gives * value for column, value in rows[lifted.jump].items()}
+    for column, state in enumerate(left):
+        row[column] += state[PARTNER[lifted.jump]]
+    rows[lifted.jump] = row
+    return solve(rows, 4, [{lifted.jump: Fraction(1)}])[0]
+
+
+def _bent(state: State, flexibility: Fraction) -> Coefficients:
+    """The shape from a state rightward: a cubic, for nothing acts on the stretch."""
+    height, slope, couple, force = state
+    return height, slope, -couple * flexibility / 2, force * flexibility / 6
+
+
+def _carried(pair: Pair, stretch: _Stretch, by: Fraction) -> Pair:
+    """The states of the pair further right by a length, or further left where it is negative."""
+
+    def carried(state: State) -> State:
+        height, slope, half, sixth = _bent(state, stretch.flexibility)
+        return (
+            height + by * (slope + by * (half + by * sixth)),
+            slope + by * (2 * half + by * 3 * sixth),
+            state[COUPLE] - by * state[FORCE],
+            state[FORCE],
+        )
+
+    return carried(pair[0]), carried(pair[1])
+
+
+def _cubics(pair: Pair, stretch: _Stretch) -> _Cubics:
+    one, two = (_bent(state, stretch.flexibility) for state in pair)
+    whole, bottom = _whole((*one, *two))
+    return _Cubics(whole[:4], whole[4:], bottom)
+
+
+def _cubic(shapes: _Cubics, weights: Weights, bottom: int) -> Coefficients:
+    """The sum of both shapes; one division for each coefficient keeps long fractions cheap."""
+    (a, b), whole = weights, bottom * shapes.bottom
+    return tuple(
+        Fraction(a * x + b * y, whole) for x, y in zip(shapes.one, shapes.two, strict=True)
+    )
+
+
+def _sum(a: Fraction | int, one: State, b: Fraction | int, two: State) -> State:
+    return tuple(a * x + b * y for x, y in zip(one, two, strict=True))
+
+
+def _whole(values: Sequence[Fraction]) -> tuple[list[int], int]:
+    """Numerators over the least common denominator."""
+    bottom = lcm(*(value.denominator for value in values))
+    return [value.numerator * (bottom // value.denominator) for value in values], bottom

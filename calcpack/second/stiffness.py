@@ -5,194 +5,187 @@ from __future__ import annotations
 import itertools
 from collections.abc import Sequence
 from dataclasses import dataclass
-from decimal import Decimal, localcontext
 from fractions import Fraction
 
 import numpy as np
 from numpy.typing import NDArray
 
-from calcpack.errors import ProgramFault
 from calcpack.model.beam import Beam
-from calcpack.model.request import Effect
+from calcpack.model.request import Effect, EffectKind
+from calcpack.second.balance import HELD, Decimals, Element, Indices, balanced, decimal, zeros
+from calcpack.second.bending import stiffness_after
 from calcpack.second.faces import face_or_inner
 
-# A piece of length l beside a beam of length L stiffens by (L / l)**3, so doubles are spent at
-# l / L of about 1e-5. Decimal floats hold whatever two typed stations leave between them.
-FACTOR_DIGITS = 100
-RESIDUAL_DIGITS = 200
-UNBALANCED = Decimal("1e-40")
-ROUNDS = 20
-
 Floats = NDArray[np.float64]
-Decimals = NDArray[np.object_]
-Indices = NDArray[np.intp]
-HELD = -1
 
 
 @dataclass(frozen=True, eq=False)
 class Ordinates:
-    """One effect under a unit downward load just left and just right of every key station.
+    """One effect under a unit downward load, and under a unit clockwise couple, at key stations.
+
+    The couple is two opposite loads close together, so the effect under it is the line's slope. A
+    load between two joints acts on them by its fixed-end forces, cubics in its station: with
+    values and slopes at both ends of a stretch the line is known all along it.
 
     Attributes:
         stations: the n key stations, from 0 to the beam's length.
-        left, right: n values each; at the two ends both are the inner value.
+        left, right: values just left and just right of each; at the ends both are the inner one.
+        left_slopes, right_slopes: the same of the slopes.
     """
 
     stations: Floats
     left: Floats
     right: Floats
+    left_slopes: Floats
+    right_slopes: Floats
+
+    @property
+    def hulls(self) -> Floats:
+        """The cubic on each stretch by its four Bézier ordinates, (n - 1) x 4.
+
+        Source: at thirds of the stretch, the inner two on the tangents at its ends.
+
+        >>> line, slope = np.array([0.0, 6.0]), np.ones(2)
+        >>> Ordinates(line, line, line, slope, slope).hulls.tolist()
+        [[0.0, 2.0, 4.0, 6.0]]
+        """
+        third = np.diff(self.stations) / 3
+        start, end = self.right[:-1], self.left[1:]
+        rise, drop = third * self.right_slopes[:-1], third * self.left_slopes[1:]
+        return np.column_stack([start, start + rise, end - drop, end])
+
+    def __mul__(self, factor: float) -> Ordinates:
+        """The same in another unit of the effect."""
+        values = (self.left, self.right, self.left_slopes, self.right_slopes)
+        return Ordinates(self.stations, *(factor * value for value in values))
+
+    def values(self, places: Floats) -> Floats:
+        """The line anywhere, at a station its value just right of it (at the right end the inner
+        one); 0 off the beam.
+
+        >>> line, slope = np.array([0.0, 6.0]), np.ones(2)
+        >>> Ordinates(line, line, line, slope, slope).values(np.array([1.5, 6.0, 7.0])).tolist()
+        [1.5, 6.0, 0.0]
+        """
+        index = np.searchsorted(self.stations, places, side="right") - 1
+        index = np.clip(index, 0, len(self.stations) - 2)
+        start, end = self.stations[index], self.stations[index + 1]
+        t = (places - start) / (end - start)
+        a, b, c, d = self.hulls.T
+        powers = np.array([a, 3 * (b - a), 3 * (a - 2 * b + c), d - a + 3 * (b - c)])
+        zeroth, first, second, third = powers[:, index]
+        cubic = zeroth + t * (first + t * (second + t * third))
+        on_beam = (places >= self.stations[0]) & (places <= self.stations[-1])
+        return np.where(on_beam, cubic, 0.0)
 
 
 def ordinates(beam: Beam, effects: Sequence[Effect]) -> tuple[Ordinates, ...]:
-    """Ordinates of the influence line of each effect, by the stiffness of a uniform elastic beam.
+    """The influence line of each effect, by the stiffness of the elastic beam.
 
-    Every key station is a joint, every stretch between two an Euler-Bernoulli element with
-    EI = 1. The matrix is scaled to unit beam length and factored once; the solution is refined
-    until the end forces of the elements, from the accumulated displacements, balance each unit
-    load within 1e-40 at every joint.
+    Every key station is a joint, every stretch between two an Euler-Bernoulli element. The beam is
+    scaled to unit length and, in its first stretch, unit stiffness.
 
     Args:
-        beam: stable; it need not be determinate.
+        beam: stable; EI = 1 where its stiffness is unknown.
         effects: at key stations of the beam; a face where two values exist.
 
     Returns:
         Per effect its ordinates, signs as in ``model.request.Effect``; pure numbers for reaction
-        and shear, lengths for the moments. Between key stations the line of a determinate beam is
-        straight.
+        and shear, lengths for the moments, a length and rad per unit force for deflection and
+        rotation.
 
     Raises:
-        ProgramFault: the end forces cannot be brought into balance (the beam is not stable).
+        ProgramFault: the beam is not stable.
 
     Source: the displacement method with cubic elements, as in any text on matrix structural
-    analysis; iterative refinement after J. H. Wilkinson.
+    analysis.
     """
-    stations = beam.stations
-    lefts, rights, size = _freedoms(beam)
-    loaded, cases = np.unique(np.append(lefts[:, 0], rights[:, 0]), return_inverse=True)
-    with localcontext(prec=RESIDUAL_DIGITS):
-        lengths = [_decimal((b.at - a.at) / beam.length) for a, b in itertools.pairwise(stations)]
-        members = np.hstack([rights[:-1], lefts[1:]])
-        forces = _end_forces(np.array([_element(x) for x in lengths]), members, loaded, size)
-        shears = _zeros(len(stations), 2, len(loaded))
-        shears[1:, 0], shears[:-1, 1] = forces[:, 2], -forces[:, 0]
-        moments = _zeros(*shears.shape)
-        moments[1:, 0], moments[:-1, 1] = -forces[:, 3], forces[:, 1]
-        moments = moments * _decimal(beam.length)
-        places = np.array([float(station.at) for station in stations])
-        index_of = {station.at: index for index, station in enumerate(stations)}
-        lines = []
-        for effect in effects:
-            at = index_of[effect.station]
-            # The load at the station itself is first counted as standing between the two faces.
-            value, jump_left, jump_right = _recovered(effect, shears[at], moments[at])
-            left, right = value[cases[: len(stations)]], value[cases[len(stations) :]]
-            left[at] += jump_left
-            right[at] += jump_right
-            left[0], right[-1] = right[0], left[-1]
-            lines.append(Ordinates(places, left.astype(float), right.astype(float)))
+    stations, length = beam.stations, beam.length
+    bending = stiffness_after(beam, Fraction(0))
+    nodes, freedoms, size = _freedoms(beam)
+    members = np.hstack([freedoms[:-1, 1], freedoms[1:, 0]])
+    elements = [
+        Element(stiffness_after(beam, one.at) / bending, (other.at - one.at) / length)
+        for one, other in itertools.pairwise(stations)
+    ]
+    balance = balanced(elements, members, _springs(beam, nodes, bending), size)
+    # By station, face, and whether shear or moment: what the beam left of the face does to it.
+    cuts = zeros(len(stations), 2, 2, size + 1)
+    cuts[1:, 0, 0], cuts[1:, 0, 1] = balance.forces[:, 2], -balance.forces[:, 3]
+    cuts[:-1, 1, 0], cuts[:-1, 1, 1] = -balance.forces[:, 0], balance.forces[:, 1]
+    moves = balance.displacements[freedoms]
+    sizes: dict[EffectKind, Fraction] = {
+        "reaction": Fraction(1),
+        "moment reaction": length,
+        "shear": Fraction(1),
+        "moment": length,
+        "deflection": length**3 / bending,
+        "rotation": length**2 / bending,
+    }
+    places = np.array([float(station.at) for station in stations])
+    index_of = {station.at: index for index, station in enumerate(stations)}
+    lines = []
+    for effect in effects:
+        at = index_of[effect.station]
+        under_unit, jumps = _recovered(effect, cuts[at], moves[at])
+        # By station, face, and whether the load is a force or a couple. A load at the effect's own
+        # station has been counted as standing between the two faces.
+        value = under_unit[freedoms] * decimal(sizes[effect.kind])
+        value[..., 1] /= decimal(length)
+        value[at] += jumps
+        value[0, 0], value[-1, 1] = value[0, 1], value[-1, 0]
+        left, right = value[:, 0].astype(float), value[:, 1].astype(float)
+        lines.append(Ordinates(places, left[:, 0], right[:, 0], left[:, 1], right[:, 1]))
     return tuple(lines)
 
 
-def _recovered(effect: Effect, shears: Decimals, moments: Decimals) -> tuple[Decimals, int, int]:
-    """An effect under every load case, and what it jumps by when the load at its own station
-    crosses the cut to the left or to the right."""
+def _springs(beam: Beam, nodes: Indices, bending: Fraction) -> dict[int, Fraction]:
+    """The stiffness of every spring, scaled, by the number of the freedom that it holds."""
+    springs = {}
+    for station, (deflection, rotation) in zip(beam.stations, nodes.tolist(), strict=True):
+        support = station.support
+        if support is not None and support.vertical:
+            springs[deflection] = support.vertical * beam.length**3 / bending
+        if support is not None and support.rotational:
+            springs[rotation] = support.rotational * beam.length / bending
+    return springs
+
+
+def _recovered(effect: Effect, cut: Decimals, moves: Decimals) -> tuple[Decimals, list[list[int]]]:
+    """An effect under every unit load, from what happens at its station, and what it jumps by when
+    the load there crosses to the left face and to the right face: (force, couple) each."""
     face = 0 if face_or_inner(effect.face, effect.station) == "left" else 1
     match effect.kind:
         case "reaction":
-            return shears[1] - shears[0], 1, 1
+            return cut[1, 0] - cut[0, 0], [[1, 0], [1, 0]]
         case "moment reaction":
-            return moments[0] - moments[1], 0, 0
+            return cut[0, 1] - cut[1, 1], [[0, 1], [0, 1]]
         case "shear":
-            return shears[face], face - 1, face
+            return cut[face, 0], [[face - 1, 0], [face, 0]]
         case "moment":
-            return moments[face], 0, 0
+            return cut[face, 1], [[0, 1 - face], [0, -face]]
+        case "deflection":
+            return moves[face, 0], [[0, 0], [0, 0]]
+        case "rotation":
+            return moves[face, 1], [[0, 0], [0, 0]]
 
 
 def _freedoms(beam: Beam) -> tuple[Indices, Indices, int]:
-    """Per station the numbers of deflection and rotation of the piece on its left and on its
-    right (n x 2 each, HELD where a support holds it), and how many numbers there are."""
+    """The numbers of deflection and rotation, HELD where they are held: of what a support at each
+    station holds (n x 2), of the pieces on its left and on its right (n x 2 x 2), and their
+    count."""
     numbers = itertools.count()
-    lefts, rights = [], []
+    nodes, pieces = [], []
     for station in beam.stations:
         support, release = station.support, station.release
-        deflection = HELD if support is not None and support.holds_vertical else next(numbers)
-        rotation = HELD if support is not None and support.holds_rotation else next(numbers)
+        held = support is not None and support.holds_vertical and not support.vertical
+        turned = support is not None and support.holds_rotation and not support.rotational
+        deflection, rotation = HELD if held else next(numbers), HELD if turned else next(numbers)
         node = other = (deflection, rotation)
         if release is not None:
             own = next(numbers)
             other = (deflection, own) if release.kind == "hinge" else (own, rotation)
         on_right = support is not None and support.face == "right"
-        lefts.append(other if on_right else node)
-        rights.append(node if on_right else other)
-    return np.array(lefts), np.array(rights), next(numbers)
-
-
-def _element(length: Decimal) -> Decimals:
-    """Forces (down, clockwise) at the start and at the end by deflection and rotation there."""
-    a, b, c = 12 / length**3, 6 / length**2, 2 / length
-    return np.array([[a, b, -a, b], [b, 2 * c, -b, c], [-a, -b, a, -b], [b, c, -b, 2 * c]])
-
-
-def _end_forces(elements: Decimals, members: Indices, loaded: Indices, size: int) -> Decimals:
-    """End forces (elements x 4 x cases) for a unit load on each freedom in ``loaded``.
-
-    The last row of every matrix stands for all that is held: HELD is its index.
-    """
-    matrix = _zeros(size + 1, size + 1)
-    for element, member in zip(elements, members, strict=True):
-        matrix[np.ix_(member, member)] += element
-    free = [member[member != HELD] for member in members]
-    band = max((int(np.ptp(freedoms)) for freedoms in free if len(freedoms)), default=0)
-    loads = _zeros(size + 1, len(loaded))
-    loads[loaded, np.arange(len(loaded))] = Decimal(1)
-    with localcontext(prec=FACTOR_DIGITS):
-        factors = _factored(matrix[:size, :size], band)
-    displacements = _zeros(*loads.shape)
-    residual = loads
-    for _ in range(ROUNDS):
-        with localcontext(prec=FACTOR_DIGITS):
-            correction = _substituted(factors, band, residual[:size])
-        displacements[:size] += correction
-        forces: Decimals = elements @ displacements[members]
-        residual = loads.copy()
-        np.subtract.at(residual, members, forces)
-        if np.all(np.abs(residual[:size]) < UNBALANCED):
-            # What lies below the balance reached is no force: a moment at a hinge is 0.
-            settled: Decimals = np.frompyfunc(lambda force: force.quantize(UNBALANCED), 1, 1)(
-                forces
-            )
-            return settled
-    raise ProgramFault("the stiffness solution does not come into balance")
-
-
-def _factored(matrix: Decimals, band: int) -> Decimals:
-    """Triangular factors, the lower one with ones on its diagonal, of a banded matrix."""
-    factors = matrix.copy()
-    for pivot in range(len(factors)):
-        if factors[pivot, pivot] <= 0:
-            raise ProgramFault("the stiffness of the beam is not positive")
-        ahead = slice(pivot + 1, pivot + band + 1)
-        factors[ahead, pivot] /= factors[pivot, pivot]
-        factors[ahead, ahead] -= np.outer(factors[ahead, pivot], factors[pivot, ahead])
-    return factors
-
-
-def _substituted(factors: Decimals, band: int, sides: Decimals) -> Decimals:
-    """Forward and back substitution, all right-hand sides at once."""
-    solution = sides.copy()
-    for row in range(len(factors)):
-        behind = slice(max(0, row - band), row)
-        solution[row] -= factors[row, behind] @ solution[behind]
-    for row in reversed(range(len(factors))):
-        ahead = slice(row + 1, row + band + 1)
-        solution[row] -= factors[row, ahead] @ solution[ahead]
-        solution[row] /= factors[row, row]
-    return solution
-
-
-def _decimal(value: Fraction) -> Decimal:
-    return Decimal(value.numerator) / value.denominator
-
-
-def _zeros(*shape: int) -> Decimals:
-    return np.full(shape, Decimal(0), dtype=object)
+        nodes.append(node)
+        pieces.append((other, node) if on_right else (node, other))
+    return np.array(nodes), np.array(pieces), next(numbers)

@@ -13,6 +13,8 @@ from calcpack.second.stiffness import Floats, Ordinates
 # puts two axles on two breakpoints at once, where rounding would choose a side for each.
 STAGGER = 0.382
 
+HALVINGS = 30
+
 
 def swept(
     ordinates: Ordinates, load: MovingLoad, sense: Literal[1, -1], steps: int = 2000
@@ -20,7 +22,7 @@ def swept(
     """The greatest effect of a moving load in one sense, by a dense sweep in equal steps.
 
     Args:
-        ordinates: of one effect; the line is taken as straight between neighbouring stations.
+        ordinates: of one effect.
         load: the train, swept under each of its headings, and its uniform load.
         sense: 1 for the greatest positive value, -1 for the greatest negative.
         steps: steps from the train's first axle on the beam to its last axle off it.
@@ -35,19 +37,21 @@ def swept(
     only; the uniform load stands on whatever parts raise the effect; distribution takes its part
     of both.
     """
-    knots = np.repeat(ordinates.stations, 2)
-    line = sense * np.column_stack([ordinates.left, ordinates.right]).ravel()
+    hulls, widths = sense * ordinates.hulls, np.diff(ordinates.stations)
     found = possible = 0.0
     for heading in load.headings:
-        reached, bound = _best(knots, line, load, -1 if heading == "right" else 1, steps)
+        behind = -1 if heading == "right" else 1
+        reached, bound = _best(ordinates, load, sense, behind, steps)
         found, possible = max(found, reached), max(possible, bound)
     axles = (1 + float(load.allowance)) * float(load.distribution)
-    uniform = float(load.uniform) * float(load.distribution) * _positive_area(knots, line)
-    return sense * (axles * found + uniform), axles * (possible - found)
+    value = axles * found
+    if load.uniform:
+        value += float(load.uniform) * float(load.distribution) * _positive_area(widths, hulls)
+    return sense * value, axles * (possible - found)
 
 
 def _best(
-    knots: Floats, line: Floats, load: MovingLoad, behind: int, steps: int
+    ordinates: Ordinates, load: MovingLoad, sense: int, behind: int, steps: int
 ) -> tuple[float, float]:
     """The greatest sum over the axles at a position of the grid, and a bound on it anywhere.
 
@@ -56,27 +60,56 @@ def _best(
     """
     weights = np.array([float(axle.weight) for axle in load.axles])
     offsets = behind * np.array([float(offset) for offset in load.offsets])
+    knots = np.repeat(ordinates.stations, 2)
+    line = sense * np.column_stack([ordinates.left, ordinates.right]).ravel()
     first, last = knots[0] - max(offsets, default=0.0), knots[-1] - min(offsets, default=0.0)
     step = (last - first) / steps
     start = first - STAGGER * step
     leads = start + step * np.arange(steps + 2)
-    heights = np.interp(leads[:, None] + offsets, knots, line, left=0.0, right=0.0)
+    heights = sense * ordinates.values(leads[:, None] + offsets)
     highest = np.maximum(heights[:-1], heights[1:])
-    # Inside a cell the line is highest at a breakpoint; one at a cell's edge goes to both cells.
+    # A breakpoint inside a cell may be higher; one at a cell's edge goes to both cells.
     cells = (knots[:, None] - offsets - start) / step
     for rounding in (-1e-6, 1e-6):
         cell = np.floor(cells + rounding).astype(int)
         np.maximum.at(highest, (cell, np.arange(len(offsets))), line[:, None])
+    highest += _bulge(np.diff(ordinates.stations), sense * ordinates.hulls, step)
     if load.relieving == "neglect":
         heights, highest = np.maximum(heights, 0.0), np.maximum(highest, 0.0)
     return float(max((heights @ weights).max(), 0.0)), float(max((highest @ weights).max(), 0.0))
 
 
-def _positive_area(knots: Floats, line: Floats) -> float:
-    """The area between the axis and the parts of a broken line above it."""
-    start, end = line[:-1], line[1:]
-    above = np.maximum(start, 0.0) + np.maximum(end, 0.0)
-    height = np.abs(start) + np.abs(end)
-    # The part above the axis is a triangle or a trapezium: above / height of the stretch.
-    share = np.divide(above, height, out=np.zeros_like(height), where=height > 0)
-    return float(np.sum(np.diff(knots) * above * share) / 2)
+def _bulge(widths: Floats, hulls: Floats, step: float) -> float:
+    """The most by which cubics rise above their chords inside a step: step² max(-f'') / 8.
+
+    The second derivative is straight; at the ends of a stretch it is six times the second
+    difference of the Bézier ordinates over the width squared.
+    """
+    bends = -np.diff(hulls, 2).min(axis=1, initial=0.0)
+    return float((0.75 * bends * np.minimum(step / widths, 1.0) ** 2).max())
+
+
+def _positive_area(widths: Floats, hulls: Floats) -> float:
+    """The area between the axis and the parts of the line above it.
+
+    A cubic lies between its Bézier ordinates, and its mean is theirs. Where they lie on both sides
+    of the axis the stretch is halved (P. de Casteljau), until what is left is nothing.
+    """
+    area = 0.0
+    for _ in range(HALVINGS):
+        above, below = (hulls >= 0).all(axis=1), (hulls <= 0).all(axis=1)
+        area += float(widths[above] @ hulls[above].mean(axis=1))
+        crossing = ~(above | below)
+        widths = np.repeat(widths[crossing] / 2, 2)
+        hulls = _halves(hulls[crossing])
+    return area
+
+
+def _halves(hulls: Floats) -> Floats:
+    """The Bézier ordinates of the left and the right half of each cubic."""
+    levels = [hulls]
+    while levels[-1].shape[1] > 1:
+        levels.append((levels[-1][:, :-1] + levels[-1][:, 1:]) / 2)
+    left = np.column_stack([level[:, 0] for level in levels])
+    right = np.column_stack([level[:, -1] for level in reversed(levels)])
+    return np.stack([left, right], axis=1).reshape(-1, 4)

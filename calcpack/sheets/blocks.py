@@ -42,7 +42,23 @@ class Reference:
     text: str
 
 
-Inline = str | Symbol | Value | Digits | Expression | Reference
+@dataclass(frozen=True)
+class Styled:
+    """Text set apart from what stands around it."""
+
+    text: Text
+    style: Literal["strong", "emphasis", "code"]
+
+
+@dataclass(frozen=True)
+class Tex:
+    """A formula of the engineer's own, as typed in TeX; ``display``: on a line of its own."""
+
+    source: str
+    display: bool = False
+
+
+Inline = str | Symbol | Value | Digits | Expression | Reference | Styled | Tex
 Text = tuple[Inline, ...]
 """A run of text; a plain string in it is shown as typed, never read as markup."""
 
@@ -132,6 +148,23 @@ class Preformatted:
     text: str
 
 
+@dataclass(frozen=True)
+class Items:
+    """A list, numbered from ``start``; None: with bullets."""
+
+    items: tuple[tuple[Block, ...], ...]
+    start: int | None = None
+
+
+@dataclass(frozen=True)
+class Picture:
+    """An image that was made elsewhere; ``alt`` says in words what it is."""
+
+    content: bytes
+    kind: Literal["png", "jpg", "svg"]
+    alt: str
+
+
 Block = (
     Heading
     | Paragraph
@@ -143,6 +176,8 @@ Block = (
     | Signatures
     | Contents
     | Preformatted
+    | Items
+    | Picture
 )
 
 

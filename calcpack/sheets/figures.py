@@ -30,7 +30,7 @@ from calcpack.sheets.drawing import (
 )
 from calcpack.sheets.labels import Tag
 from calcpack.sheets.lettering import PITCH, plain, signed
-from calcpack.sheets.line_parts import TALLEST, areas, drop_of, line_items, ordinates
+from calcpack.sheets.line_parts import TALLEST, areas, drop_of, line_items, marks, ordinates
 
 WIDTH = 150.0
 """Width of a figure in mm unless told otherwise."""
@@ -83,17 +83,14 @@ def line_figure(
     Args:
         beam: drawn above.
         line: over the whole beam; positive values are drawn upward in tone, negative ones downward
-            and hatched. Straight pieces only.
+            and hatched.
         title: what the line is of, such as "M at 1".
         unit: of the ordinates, "" for a pure number.
-        decimals: of the ordinates, which are written where the line breaks; at a jump both sides'
-            values, left | right, or each on its own side of the axis.
+        decimals: of the ordinates, which are written where the line breaks or turns; at a jump both
+            sides' values, left | right, or each on its own side of the axis.
         units: "US" or "SI": the unit of length, also in that of the areas.
         area_decimals: of the areas.
         width: of the paper in mm; the height follows.
-
-    Raises:
-        ValueError: the line has a curved piece.
     """
     scale, length = beam_scale(beam, width), SYSTEMS[units]["length"]
     curve = line_items(line, scale)
@@ -136,16 +133,13 @@ def placement_figure(
         units: "US" or "SI": the unit of the weights.
         heading: the way the load travels.
         width: of the paper in mm; the height follows.
-
-    Raises:
-        ValueError: the line has a curved piece.
     """
     scale, force = beam_scale(beam, width), SYSTEMS[units]["force"]
     drop = drop_of(line)
     curve = line_items(line, scale)
     dots = tuple(Circle((scale(at), drop(value)), DOT, "solid") for at, _, value in axles)
     lanes = [Line(((x, -TALLEST), (x, TALLEST)), "hair") for x, _ in (dot.centre for dot in dots)]
-    others = set(line.breaks) - {at for at, _, _ in axles}
+    others = set(marks(line)) - {at for at, _, _ in axles}
     labels = ordinates(line, scale, decimals, (*curve, *dots, *lanes), width, others)
     under = (*curve, *labels, *dots)
     foot = extent(under)[1] + BETWEEN
@@ -244,7 +238,8 @@ def _beam_words(beam: Beam, unit: str) -> str:
 def _line_words(line: Piecewise, decimals: int) -> str:
     """An influence line's breakpoints in words."""
     parts = []
-    for at, station in zip(line.breaks, digits(line.breaks), strict=True):
+    places = marks(line)
+    for at, station in zip(places, digits(places), strict=True):
         left, right = (printed(value, decimals) for value in (line.left(at), line.right(at)))
         parts.append(f"{left if left == right else f'{left} | {right}'} at {station}")
     return ", ".join(parts)

@@ -21,6 +21,8 @@ ROOM = 0.8
 """Left free around an area's label, in mm."""
 TRIALS = 40
 """Places along a stretch at which its area is tried."""
+SMOOTH = 24
+"""Strokes that a curved piece is drawn with."""
 
 
 @dataclass(frozen=True)
@@ -33,16 +35,37 @@ class Lobe:
     corners: tuple[tuple[Fraction, Fraction], ...]
 
 
-def lobes(line: Piecewise) -> tuple[Lobe, ...]:
-    """The stretches of one sign of a line, in order.
+def stops(line: Piecewise) -> tuple[Fraction, ...]:
+    """The breakpoints, and as many places inside each curved piece as make it look smooth."""
+    found = set(line.breaks)
+    for (start, end), piece in zip(itertools.pairwise(line.breaks), line.pieces, strict=True):
+        if len(piece) > 2:
+            found.update(start + (end - start) * step / SMOOTH for step in range(1, SMOOTH))
+    return tuple(sorted(found))
 
-    Raises:
-        ValueError: the line has a curved piece.
-    """
+
+def marks(line: Piecewise) -> tuple[Fraction, ...]:
+    """Where values are written: ends, jumps and kinks, and the turns of curved pieces."""
+    first, *inner, last = line.breaks
+    sharp = [
+        at
+        for at in inner
+        if line.left(at) != line.right(at) or line.slope(at, "left") != line.slope(at, "right")
+    ]
+    return tuple(sorted({first, last, *sharp, *(line.turns() if line.degree > 1 else ())}))
+
+
+def lobes(line: Piecewise) -> tuple[Lobe, ...]:
+    """The stretches of one sign of a line, in order."""
     found: list[Lobe] = []
+    inner = stops(line)
     for start, end, sign in line.signed_runs():
-        corners: tuple[tuple[Fraction, Fraction], ...]
-        corners = ((start, line.right(start)), (end, line.left(end)))
+        between = [at for at in inner if start < at < end]
+        corners: tuple[tuple[Fraction, Fraction], ...] = (
+            (start, line.right(start)),
+            *((at, line.left(at)) for at in between),
+            (end, line.left(end)),
+        )
         if found and found[-1].sign == sign:
             last = found.pop()
             start, corners = last.start, (*last.corners, *corners)
@@ -52,7 +75,7 @@ def lobes(line: Piecewise) -> tuple[Lobe, ...]:
 
 def drop_of(line: Piecewise) -> Callable[[Fraction], float]:
     """How far below the axis a value is drawn, in mm: positive values stand above it."""
-    values = [value for stop in line.breaks for value in (line.left(stop), line.right(stop))]
+    values = [value for stop in stops(line) for value in (line.left(stop), line.right(stop))]
     most, least = max(*values, Fraction(0)), min(*values, Fraction(0))
     if most == least:
         return lambda value: 0.0
@@ -66,7 +89,7 @@ def line_items(line: Piecewise, scale: Scale) -> tuple[Item, ...]:
     areas = [_polygon(lobe, scale, drop) for lobe in lobes(line)]
     first, last = line.breaks[0], line.breaks[-1]
     curve = [(first, Fraction(0))]
-    for start, end in itertools.pairwise(line.breaks):
+    for start, end in itertools.pairwise(stops(line)):
         curve += [(start, line.right(start)), (end, line.left(end))]
     curve.append((last, Fraction(0)))
     path = [(scale(at), drop(value)) for at, value in curve]
@@ -89,7 +112,7 @@ def ordinates(
     width: float,
     at: Collection[Fraction] | None = None,
 ) -> tuple[Item, ...]:
-    """Labels of the line's value wherever it breaks or jumps, clear of what is ``taken``.
+    """Labels of the line's value wherever it breaks, jumps or turns, clear of what is ``taken``.
 
     At a jump to the other sign each value stands on its own side of the axis; at any other jump
     both stand in one label, left | right. Zero is labelled at jumps only.
@@ -103,7 +126,7 @@ def ordinates(
     for down in (-1, 1):
         tags = [
             Tag(plain(text), (scale(stop), drop(value)))
-            for stop in line.breaks
+            for stop in marks(line)
             if at is None or stop in at
             for text, value in _values(line, stop, decimals)
             if (value < 0) == (down > 0)

@@ -2,12 +2,19 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 from fractions import Fraction
 
-from calcpack.derive.kinds import AREA_KIND, DECIMALS
-from calcpack.derive.steps import AreaGroup, LineGroup, StationGroup, Step
+from calcpack.derive.kinds import AREA_KIND, DECIMALS, LINE_KIND
+from calcpack.derive.steps import (
+    AreaGroup,
+    DeflectionGroup,
+    LineGroup,
+    Row,
+    StationGroup,
+    Step,
+    StepGroup,
+)
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.request import Detail, Effect
 from calcpack.sheets.blocks import (
@@ -16,7 +23,6 @@ from calcpack.sheets.blocks import (
     Column,
     Digits,
     Equation,
-    Expression,
     Figure,
     Heading,
     Paragraph,
@@ -24,28 +30,19 @@ from calcpack.sheets.blocks import (
     Text,
     Value,
 )
+from calcpack.sheets.elastic import group_blocks
 from calcpack.sheets.figures import line_figure
 from calcpack.sheets.free_body import free_body_figure, free_body_of
+from calcpack.sheets.tables import effect_title, result_of, step_table, with_symbols
 from calcpack.solution import Solution
+from calcpack.statics.influence import Cut
 from calcpack.statics.plan import PlanStep, equation_in_words
-from calcpack.statics.system import symbol_of
+from calcpack.statics.system import key_of, symbol_of
 
-NAMES = {
-    "reaction": "Reaction of support {}",
-    "moment reaction": "Couple held by support {}",
-    "shear": "Shear at {}",
-    "moment": "Moment at {}",
-}
 BODY_WIDTH = 74.0
 """Width of a free body beside its equations, in mm."""
 MOST_ROWS = 200
 """A longer table of ordinates is printed without the numbers of each row."""
-
-
-def effect_title(effect: Effect) -> str:
-    """``Shear at B, just left``."""
-    face = f", just {effect.face} of it" if effect.face else ""
-    return NAMES[effect.kind].format(effect.at) + face
 
 
 def model_blocks(solution: Solution) -> tuple[Block, ...]:
@@ -101,57 +98,45 @@ def unknown_blocks(solution: Solution) -> tuple[Block, ...]:
 
 
 def line_blocks(solution: Solution) -> tuple[Block, ...]:
-    """One equation more for each section; then every line drawn, with its areas."""
+    """For each effect what finds its line, in the order of the derivation, then the line drawn."""
     blocks: list[Block] = [Heading(1, ("Influence lines",))]
-    derived = {
-        group.quantity: group
+    groups = iter(solution.derivation.groups)
+    planned = len(solution.plan)
+    for group in groups:
+        planned -= isinstance(group, LineGroup)
+        if not planned:
+            break
+    rows: dict[Effect, tuple[Step, ...]] = {
+        group.quantity: tuple(row.step for row in group.rows)
         for group in solution.derivation.groups
-        if isinstance(group, LineGroup)
+        if isinstance(group, LineGroup | DeflectionGroup)
     }
-    areas = {
-        group.effect: group for group in solution.derivation.groups if isinstance(group, AreaGroup)
-    }
-    for found in solution.lines:
-        group = derived[found.effect]
-        if found.cut is not None:
+    for group in groups:
+        if isinstance(group, LineGroup) and isinstance(group.source, Cut):
             reason = (
-                f"Cut at {found.effect.at} and keep the part on the {found.cut.keeps}, "
+                f"Cut at {group.quantity.at} and keep the part on the {group.source.keeps}, "
                 "where no more forces act than on the other; the unknowns are known by now."
             )
             blocks += _derived(solution, group, reason, detail_of(solution, group))
-        blocks += _drawn(solution, found.effect, group, areas[found.effect])
+        elif isinstance(group, StepGroup):
+            blocks += group_blocks(solution, group)
+        elif isinstance(group, DeflectionGroup):
+            blocks += _deflection(solution, group)
+        elif isinstance(group, AreaGroup):
+            steps = rows.get(group.effect) or _redundant_rows(solution, group.effect)
+            blocks += _drawn(solution, group, steps)
     return tuple(blocks)
 
 
-def step_table(solution: Solution, steps: tuple[Step, ...]) -> Table:
-    """Steps with numbers: formula in symbols, in digits, and the result."""
-    units = SYSTEMS[solution.calculation.units]
-    columns = (
-        Column("step", "right"),
-        Column("finds"),
-        Column("in symbols", width=5),
-        Column("with numbers", width=6),
-        Column("result", "right"),
-        Column("unit"),
-    )
-    rows = tuple(
-        (
-            (step.id,),
-            (step.left,),
-            (Expression(step.formula),),
-            (Digits(step.formula),),
-            (result_of(solution, step),),
-            (units[step.kind],),
-        )
-        for step in steps
-    )
-    return Table(columns, rows, ticked=True)
+def _redundant_rows(solution: Solution, effect: Effect) -> tuple[Step, ...]:
+    root = f"redundants/{key_of(effect)}/at="
+    return tuple(step for step in solution.derivation.steps if step.key.startswith(root))
 
 
-def result_of(solution: Solution, step: Step) -> Value:
-    """A step's result with the decimals it closes with."""
-    assert step.value is not None
-    return Value(step.value, solution.derivation.decimals[f"step:{step.key}"])
+def _deflection(solution: Solution, group: DeflectionGroup) -> Iterator[Block]:
+    yield Heading(2, (effect_title(group.quantity), ": ", symbol_of(group.quantity)), group.number)
+    yield Equation(group.statement, group.statement.condition)
+    yield ordinate_table(solution, group.quantity, group.rows, detail_of(solution, group))
 
 
 def _derived(solution: Solution, group: LineGroup, reason: str, detail: Detail) -> Iterator[Block]:
@@ -169,28 +154,23 @@ def _derived(solution: Solution, group: LineGroup, reason: str, detail: Detail) 
         )
         yield Paragraph(with_symbols(solution, reason), leads=True)
         yield Beside(equations, Figure(free_body_figure(body, unit, BODY_WIDTH)))
-    yield _rows(solution, group, detail)
+    yield ordinate_table(solution, group.quantity, group.rows, detail)
 
 
-def detail_of(solution: Solution, group: LineGroup) -> Detail:
+def detail_of(solution: Solution, group: LineGroup | DeflectionGroup) -> Detail:
     """How much of a derivation is printed: as asked for, but of a long table not every number."""
     asked = group.quantity.show or solution.calculation.package.detail
     return "plan" if asked == "every equation" and len(group.rows) > MOST_ROWS else asked
 
 
-def with_symbols(solution: Solution, words: str) -> Text:
-    """Words in which the symbols of the unknowns are set as symbols."""
-    known = {str(symbol_of(one)): symbol_of(one) for one in solution.unknowns}
-    longest_first = sorted(known, key=len, reverse=True)
-    pattern = "|".join(re.escape(name) for name in longest_first)
-    return tuple(known.get(part, part) for part in re.split(f"({pattern})", words) if part)
-
-
-def _rows(solution: Solution, group: LineGroup, detail: Detail) -> Table:
+def ordinate_table(
+    solution: Solution, quantity: Effect, found: tuple[Row, ...], detail: Detail
+) -> Table:
+    """A line's value at every key station, with its numbers, beside the stiffness solution's."""
     units = SYSTEMS[solution.calculation.units]
-    second = solution.second.stiffness[group.quantity]
+    second = solution.second.stiffness[quantity]
     stations = [station.at for station in solution.calculation.beam.stations]
-    unit = units[group.rows[0].step.kind]
+    unit = units[LINE_KIND[quantity.kind]]
     in_full = detail == "every equation"
     columns = (
         Column("step", "right"),
@@ -201,7 +181,7 @@ def _rows(solution: Solution, group: LineGroup, detail: Detail) -> Table:
         Column("stiffness", "right"),
     )
     rows = []
-    for row in group.rows:
+    for row in found:
         result = result_of(solution, row.step)
         index = stations.index(row.at)
         other = (second.right if row.side == "right" else second.left)[index]
@@ -225,15 +205,17 @@ def _numbers(step: Step) -> Text:
     return (Digits(step.formula),)
 
 
-def _drawn(
-    solution: Solution, effect: Effect, group: LineGroup, areas: AreaGroup
-) -> Iterator[Block]:
-    calculation = solution.calculation
-    unit = SYSTEMS[calculation.units][group.rows[0].step.kind]
+def _drawn(solution: Solution, areas: AreaGroup, ordinates: tuple[Step, ...]) -> Iterator[Block]:
+    calculation, effect = solution.calculation, areas.effect
+    unit = SYSTEMS[calculation.units][LINE_KIND[effect.kind]]
     line = next(found.line for found in solution.lines if found.effect == effect)
-    decimals = max(solution.derivation.decimals[f"step:{row.step.key}"] or 4 for row in group.rows)
+    decimals = max(result_of(solution, step).decimals or 4 for step in ordinates)
     yield Heading(2, ("Line and areas: ", effect_title(effect)), areas.number)
-    words = f"Ordinates from {_cited(group)}; areas by trapezia between the zeros."
+    between = "straight" if line.degree < 2 else "a cubic, curved as found above,"
+    words = (
+        f"Ordinates from steps {ordinates[0].id} to {ordinates[-1].id}; between them the line is "
+        f"{between} and its areas end at the zeros."
+    )
     yield Paragraph((words,), leads=True)
     places = result_of(solution, areas.positive).decimals or DECIMALS[AREA_KIND[effect.kind]]
     title = f"{effect.kind} at {effect.at}"
@@ -241,7 +223,3 @@ def _drawn(
         line_figure(calculation.beam, line, title, unit, decimals, calculation.units, places)
     )
     yield step_table(solution, areas.steps)
-
-
-def _cited(group: LineGroup) -> str:
-    return f"steps {group.rows[0].step.id} to {group.rows[-1].step.id}"

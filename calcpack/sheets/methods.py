@@ -8,7 +8,7 @@ from calcpack.derive.kinds import LINE_KIND
 from calcpack.exact.units import SYSTEMS
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Value
 from calcpack.sheets.figures import beam_figure
-from calcpack.sheets.lines import effect_title
+from calcpack.sheets.tables import effect_title
 from calcpack.solution import Solution
 
 WORDS = (

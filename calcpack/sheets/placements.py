@@ -22,9 +22,11 @@ from calcpack.sheets.blocks import (
     Value,
 )
 from calcpack.sheets.figures import placement_figure
-from calcpack.sheets.lines import effect_title, result_of, step_table
+from calcpack.sheets.tables import effect_title, result_of, step_table
 from calcpack.solution import Solution
 
+SEARCHED = 9
+"""Decimals of a place found where the rate of change is zero."""
 EXTREMES = {1: "greatest", -1: "least"}
 
 
@@ -138,12 +140,20 @@ def _standing(found: Governing, length: str) -> Iterator[Block]:
     if found.chosen is None:
         return
     position = found.chosen.position
-    words = (
-        f"Axle {found.chosen.axle + 1} stands at station ",
-        Value(found.chosen.breakpoint, DECIMALS["length"], length),
-        f", the train heading {position.heading}; axles at a jump of the line stand just "
-        f"{position.side} of it.",
-    )
+    words: Text
+    if found.chosen.breakpoint is None:
+        words = (
+            "The rate of change is zero with the lead axle at station ",
+            Value(position.lead_at, SEARCHED, length),
+            f" (to {SEARCHED} decimals), the train heading {position.heading}.",
+        )
+    else:
+        words = (
+            f"Axle {found.chosen.axle + 1} stands at station ",
+            Value(found.chosen.breakpoint, DECIMALS["length"], length),
+            f", the train heading {position.heading}; axles at a jump of the line stand just "
+            f"{position.side} of it.",
+        )
     yield Paragraph(words)
     for standing in ("off the beam", "neglected"):
         axles = [str(n) for n, s in enumerate(found.shares, start=1) if s.standing == standing]
@@ -172,15 +182,15 @@ def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[
     yield Paragraph(tuple(words))
     if found.near:
         columns = (
-            Column("near candidates: axle", "right"),
+            Column("near candidates"),
             Column("at station", "right"),
             Column("heading"),
             Column(f"value, {unit}", "right"),
         )
         rows = tuple(
             (
-                (str(one.axle + 1),),
-                (Value(one.breakpoint, DECIMALS["length"]),),
+                ("rate zero" if one.breakpoint is None else f"axle {one.axle + 1}",),
+                (Value(one.breakpoint or one.position.lead_at, DECIMALS["length"]),),
                 (one.position.heading,),
                 (Value(_value_of(group.load, found, one), decimals),),
             )

@@ -5,8 +5,9 @@ from __future__ import annotations
 from collections.abc import Callable
 
 from calcpack.exact.formula import Symbol
+from calcpack.model.beam import Face
 from calcpack.sheets.bands import BETWEEN, Band, drawn
-from calcpack.sheets.drawing import HEAD_WIDTH, Arrow, Drawing, Label, Line, Turn
+from calcpack.sheets.drawing import HEAD_WIDTH, Arrow, Drawing, Item, Label, Line, Turn
 from calcpack.sheets.lettering import PITCH, Run, Text, plain, runs_of, wrapped
 
 WIDTH = 150.0
@@ -42,16 +43,16 @@ def signs_figure() -> Drawing:
         ("Station ", Symbol("x"), "from the left end to the right", _station),
     )
     share = WIDTH / len(pieces)
-    drawings: list[Band] = []
-    words: list[Band] = []
+    drawings: list[Item] = []
+    words: list[Item] = []
     for number, (name, symbol, sense, draw) in enumerate(pieces):
         middle = share * (number + 0.5)
-        drawings.append(draw(middle))
-        words.append((_centred(Text(((Run(name), *runs_of(symbol)),)), middle, 0.0),))
-        words.append((_centred(wrapped(plain(sense), share - BETWEEN), middle, PITCH),))
+        drawings.extend(draw(middle))
+        words.append(_centred(Text(((Run(name), *runs_of(symbol)),)), middle, 0.0))
+        words.append(_centred(wrapped(plain(sense), share - BETWEEN), middle, PITCH))
     senses = "; ".join(f"{name}{symbol} {sense}" for name, symbol, sense, _ in pieces)
     return drawn(
-        (sum(drawings, ()), sum(words, ())),
+        (tuple(drawings), tuple(words)),
         WIDTH,
         "What counts as positive. At a cut: the pair on both faces; thin arrows: outside forces.",
         f"What counts as positive, drawn on small pieces of beam: {senses}. A positive shear acts "
@@ -124,15 +125,12 @@ def _station(x: float) -> Band:
     )
 
 
-def _piece(left: float, right: float, face: str = "") -> Band:
-    """A piece of beam seen from the side, open where the beam goes on beyond it."""
-    edges: dict[str, tuple[Line, ...]] = {
-        "": (Line(((left, TOP), (right, TOP)), "medium"),
-             Line(((left, BOTTOM), (right, BOTTOM)), "medium")),
-        "left": (Line(((right, TOP), (left, TOP), (left, BOTTOM), (right, BOTTOM)), "medium"),),
-        "right": (Line(((left, TOP), (right, TOP), (right, BOTTOM), (left, BOTTOM)), "medium"),),
-    }
-    return edges[face]
+def _piece(left: float, right: float, face: Face | None = None) -> Band:
+    """A piece of beam seen from the side, closed at a face, open where the beam goes on."""
+    if face is None:
+        return tuple(Line(((left, y), (right, y)), "medium") for y in (TOP, BOTTOM))
+    near, far = (left, right) if face == "left" else (right, left)
+    return (Line(((far, TOP), (near, TOP), (near, BOTTOM), (far, BOTTOM)), "medium"),)
 
 
 def _cut(x: float) -> Band:

@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
-from calcpack.errors import InputRefused
+import re
+
+from calcpack.errors import InputRefused, Problem
 from calcpack.intake import read
+from calcpack.intake.shown import unprintable
 
 US = """\
 format = 1
@@ -93,6 +96,40 @@ name = "Crane"
 axles = [ { weight = 180.0, spacing = 0 }, { weight = 180.0, spacing = 1.2 } ]
 """
 
+SPRUNG = """\
+format = 1
+units = "US"
+cover.title = "Approach girder on a flexible pier"
+
+[beam]
+length = 120
+supports = [
+  { name = "A", at = 0, kind = "fixed" },
+  { name = "B", at = 40, kind = "spring", vertical = 900.5 },
+  { name = "C", at = 80, kind = "spring", vertical = "50 kip/in", rotational = "2e4 kip·ft/rad" },
+  { name = "D", at = 120, kind = "roller" },
+]
+releases = [ { name = "h", at = 60, kind = "hinge" }, { name = "g", at = 100, kind = "slide" } ]
+stiffness = [
+  { from = 0, to = 50, EI = 2.5e6 },
+  { from = 50, to = "70 ft", E = 29000, I = "13500 in4" },
+  { from = 70.0, to = 120, E = "200 GPa", I = 14000.5 },
+]
+redundants = ["moment B", "moment C left", "moment reaction A"]
+
+[[effects]]
+kind = ["moment", "deflection", "rotation"]
+at = ["h", "g", 30]
+
+[[permanent]]
+name = "Scour at B"
+settlements = [ { at = "B", down = 0.5 }, { at = "A", turn = "-2 mrad" } ]
+
+[[permanent]]
+name = "Jacking"
+settlements = [ { at = 80, down = "-12 mm" } ]
+"""
+
 SHORT = """\
 format = 1
 units = "SI"
@@ -118,3 +155,12 @@ def faults(text: str | bytes, source: str = "calc.toml") -> list[str]:
     except InputRefused as refused:
         return str(refused).split("\n")
     return []
+
+
+def check_lines(lines: list[str], problems: tuple[Problem, ...]) -> None:
+    """Each problem is one line of plain characters: path, what was said, what is needed."""
+    assert len(lines) == len(problems) > 0
+    for line in lines:
+        assert re.match(r"\S.*: .*, \S", line), line
+        assert not any(map(unprintable, line))
+        assert len(line) < 1000

@@ -8,13 +8,12 @@ import re
 import rfc8785
 from hypothesis import given, settings
 from hypothesis import strategies as st
-from intake_samples import SHORT, SI, US, changed
+from intake_samples import SHORT, SI, SPRUNG, US, changed, check_lines
 
-from calcpack.errors import InputRefused, Problem
+from calcpack.errors import InputRefused
 from calcpack.intake import read
-from calcpack.intake.shown import unprintable
 
-SAMPLES = (US, SI, SHORT)
+SAMPLES = (US, SI, SHORT, SPRUNG)
 
 TOKEN = re.compile(r'"[^"\n]*"|[\w.+-]+|\S')
 
@@ -24,17 +23,11 @@ ODD = re.findall(
     0 -0.0 1 -1 5.5 1e400 1e-400 inf nan 0x7f 1_000 0.1 true 2026-04-07 2026-04-07T01:02:03
     "" "A" "B" "M" "mid" "tenths" "supports" "sections" "3 ft" "1e9 km" "-2 m" "2 ft 3" "1.5"
     "fixed" "guided" "slide" "hinge" "spring" "both" "left" "reaction" "shear" "moment reaction"
+    "moment B" "moment C right" "reaction C" "3 kip/ft" "4 in4" "5 rad" "6 mm" "deflection"
+    down turn EI E I from to vertical table column "s.csv"
     at name kind spans length face side axles = , [ ] { } # ' \\ "\\u0000" "\\u202e" "é" x.y
     """,
 )
-
-
-def check_lines(lines: list[str], problems: tuple[Problem, ...]) -> None:
-    assert len(lines) == len(problems) > 0
-    for line in lines:
-        assert re.match(r"\S.*: .*, \S", line), line
-        assert not any(map(unprintable, line))
-        assert len(line) < 1000
 
 
 def outcome(data: bytes) -> bool:
@@ -50,6 +43,14 @@ def outcome(data: bytes) -> bool:
     assert all(beam.station(effect.station) for effect in calculation.effects)
     assert len(set(calculation.effects)) == len(calculation.effects)
     assert any(support.holds_vertical for support in beam.supports)
+    assert all(support.holds_vertical or support.holds_rotation for support in beam.supports)
+    places = [place for one in beam.stiffness for place in (one.start, one.end)]
+    assert places[:1] + places[-1:] in ([], [0, beam.length])
+    assert places[1:-1:2] == places[2::2]
+    assert all(one.EI > 0 for one in beam.stiffness)
+    redundants = calculation.redundants or ()
+    assert len(set(redundants)) == len(redundants)
+    assert all(one.settlements for one in calculation.permanent)
     assert len({entry.path for entry in calculation.echo}) == len(calculation.echo)
     return True
 

@@ -6,7 +6,7 @@ import tomllib
 from collections.abc import Iterator
 from typing import Any
 
-from intake_samples import SHORT, SI, US, changed
+from intake_samples import SHORT, SI, SPRUNG, US, changed
 
 from calcpack.intake import read
 from calcpack.model.fields import FIELDS, pattern_of
@@ -29,7 +29,7 @@ def rows(text: str) -> dict[str, Entry]:
 
 
 def test_every_value_typed_has_one_row() -> None:
-    for text in (US, SI, SHORT):
+    for text in (US, SI, SHORT, SPRUNG):
         echo = read(text.encode()).echo
         entered = [entry.path for entry in echo if entry.entered]
         typed = {path for path in leaves(tomllib.loads(text)) if not path.startswith("effects")}
@@ -40,7 +40,7 @@ def test_every_value_typed_has_one_row() -> None:
 
 def test_rows_follow_the_field_table() -> None:
     order = list(FIELDS)
-    for text in (US, SI):
+    for text in (US, SI, SPRUNG):
         heads = [entry.path.partition(".")[0].partition("[")[0] for entry in rows(text).values()]
         places = [order.index(head) for head in heads]
         assert places == sorted(places)
@@ -88,6 +88,31 @@ def test_defaults_are_told_from_what_was_entered() -> None:
         "moving[1].distribution": "1",
     }
     assert not [entry for entry in read(US.encode()).echo if not entry.entered]
+
+
+def test_of_a_spring_what_it_does_not_hold_is_a_default() -> None:
+    echo = rows(SPRUNG)
+    assert echo["beam.supports[1].vertical"].said == "900.5"
+    assert echo["beam.supports[1].rotational"] == Entry(
+        "beam.supports[1].rotational", "Rotational spring", "0", "kip·ft/rad", False
+    )
+    assert "beam.supports[0].vertical" not in echo
+    assert echo["beam.supports[2].vertical"].said == "50 kip/in = 600"
+
+
+def test_stiffness_and_settlements_have_their_units() -> None:
+    echo = rows(SPRUNG)
+    for path, said, unit in (
+        ("beam.stiffness[0].EI", "2.5e6", "kip·ft²"),
+        ("beam.stiffness[1].E", "29000", "ksi"),
+        ("beam.stiffness[1].I", "13500 in4 = 13500", "in⁴"),
+        ("beam.redundants[1]", "moment C left", ""),
+        ("permanent[0].settlements[0].at", "B", ""),
+        ("permanent[0].settlements[0].down", "0.5", "in"),
+        ("permanent[0].settlements[1].turn", "-2 mrad = -0.002", "rad"),
+        ("permanent[1].settlements[0].at", "80", "ft"),
+    ):
+        assert (echo[path].said, echo[path].unit) == (said, unit)
 
 
 def test_labels_and_units_are_those_of_the_fields() -> None:

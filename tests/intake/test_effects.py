@@ -26,6 +26,12 @@ releases = [ { name = "h", at = 8, kind = "hinge" } ]
 sections = [ { name = "s", at = 2.5 }, { name = "7", at = 9 }, { name = "again", at = 9 } ]
 """
 
+STIFF = changed(
+    BEAM,
+    ("length = 20", "length = 20\nstiffness = [ { from = 0, to = 20, EI = 40 } ]"),
+    ('"hinge" }', '"hinge" }, { name = "d", at = 14, kind = "slide" }'),
+)
+
 TENTHS = changed(BEAM, ("sections = [", 'sections = [ "tenths",'))
 
 
@@ -85,6 +91,33 @@ def test_what_is_asked_for(kind: str, at: str, side: str, expected: list[str]) -
 
 
 @pytest.mark.parametrize(
+    ("kind", "at", "side", "expected"),
+    [
+        # deflection has two values at a slide, rotation at a hinge, also over a support
+        ('"deflection"', '"d"', "", ["deflection at d, left face", "deflection at d, right face"]),
+        ('"deflection"', "14", "right", ["deflection at d, right face"]),
+        ('"deflection"', '"h"', "", ["deflection at P"]),
+        ('"rotation"', '"h"', "", ["rotation at P, left face", "rotation at P, right face"]),
+        ('"rotation"', '"P"', "left", ["rotation at P, left face"]),
+        ('"rotation"', '"d"', "left", ["rotation at d"]),
+        # what holds deflection or rotation makes no second value
+        ('["deflection", "rotation"]', '"F"', "", ["deflection at F", "rotation at F"]),
+        ('["deflection", "rotation"]', '"s"', "", ["deflection at s", "rotation at s"]),
+        ('"rotation"', "20", "", ["rotation at 20"]),
+        ('"deflection"', '"supports"', "", [f"deflection at {name}" for name in "WPGF"]),
+    ],
+)  # fmt: skip
+def test_deflections_and_rotations(kind: str, at: str, side: str, expected: list[str]) -> None:
+    assert labels(asked(kind, at, f'side = "{side}"' if side else ""), STIFF) == expected
+
+
+def test_a_deflection_has_no_face_off_the_beam() -> None:
+    assert faults(STIFF + asked('"deflection"', "20", 'side = "right"')) == [
+        "effects[0].side: right, must not point off the beam at 20"
+    ]
+
+
+@pytest.mark.parametrize(
     ("effects", "line"),
     [
         (asked('"shear"', '"Q"'), "[0].at: Q, is not a known name; known are "
@@ -99,12 +132,13 @@ def test_what_is_asked_for(kind: str, at: str, side: str, expected: list[str]) -
         (asked('"shear"', "[[1]]"), "[0].at[0]: [1], must be a length such as 2.5 m"),
         ('[[effects]]\nkind = "shear"\n', "[0].at: absent, must be given"),
         ("[[effects]]\nat = 1\n",
-         '[0].kind: absent, must be "reaction", "moment reaction", "shear" or "moment"'),
+         '[0].kind: absent, must be "reaction", "moment reaction", "shear", "moment", '
+         '"deflection" or "rotation"'),
         (asked('"tension"', "1"),
-         '[0].kind: tension, must be "reaction", "moment reaction", "shear" or "moment"'),
-        (asked('"deflection"', "1"), "[0].kind: deflection, not computed by this release"),
-        (asked('["shear", "rotation"]', "1"),
-         "[0].kind[1]: rotation, not computed by this release"),
+         '[0].kind: tension, must be "reaction", "moment reaction", "shear", "moment", '
+         '"deflection" or "rotation"'),
+        (asked('"deflection"', "1"), "[0].kind: deflection, needs beam.stiffness"),
+        (asked('["shear", "rotation"]', "1"), "[0].kind[1]: rotation, needs beam.stiffness"),
         (asked('["shear", "shear"]', "1"), "[0].kind[1]: shear, must be stated once"),
         (
             asked('"shear"', "1", 'show = "sketch"'),

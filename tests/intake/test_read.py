@@ -37,10 +37,12 @@ def test_a_full_file_in_us_units() -> None:
     beam = calculation.beam
     assert (beam.length, beam.end) == (Fraction(100), Typed("beam.length"))
     assert beam.supports == (
-        Support("A", Fraction(0), "pin", Typed("beam.supports[0].at")),
-        Support("B", Fraction(30), "roller", Typed("beam.supports[1].at")),
-        Support("C", Fraction(72), "roller", Typed("beam.supports[2].at")),
-        Support("D", Fraction(100), "roller", Typed("beam.supports[3].at")),
+        Support("A", Fraction(0), "pin", Typed("beam.supports[0].at"), path="beam.supports[0]"),
+        Support("B", Fraction(30), "roller", Typed("beam.supports[1].at"), path="beam.supports[1]"),
+        Support("C", Fraction(72), "roller", Typed("beam.supports[2].at"), path="beam.supports[2]"),
+        Support(
+            "D", Fraction(100), "roller", Typed("beam.supports[3].at"), path="beam.supports[3]"
+        ),
     )
     assert beam.releases == (
         Release("h1", Fraction(85, 2), "hinge", Typed("beam.releases[0].at")),

@@ -54,6 +54,18 @@ def test_all_axles_stand_on_one_side_of_coinciding_jumps() -> None:
     assert governing(DROP, make_load((6, 0), (10, 3)), 1).value == 0
 
 
+@pytest.mark.parametrize("scale", [1, 1000, 100_000])
+def test_axles_that_fit_between_two_jumps_by_a_hair(scale: int) -> None:
+    """6 and 10 a millionth of a millionth closer than the jumps: both count, beside an axle of 12
+    that governs alone, and whatever small ones follow it."""
+    start, end = Fraction("1.4") * scale, Fraction("1.4") * scale + 3
+    beam = make_beam(2 * end, [(0, "fixed"), (2 * end, "roller")], [(start, "slide")], [end])
+    small = [("0.001", "0.2")] * 12
+    for spacing, value in (("2.999999999999", -16), (3, Fraction("-12.012"))):
+        load = make_load((6, 0), (10, spacing), (12, 20), *small)
+        assert governing(line_of(beam, "shear", "1"), load, -1).value == value
+
+
 def test_axles_at_one_place_take_one_side() -> None:
     """Spacing 0 at the jump of a shear line from -1/2 to +1/2."""
     found = governing(line_of(SPAN, "shear", "1"), make_load((4, 0), (6, 0)), 1)

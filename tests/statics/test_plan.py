@@ -106,4 +106,5 @@ def test_the_pin_of_a_hinge_over_a_support_is_a_body() -> None:
     pin = next(step for step in steps if step.unknown.kind == "reaction" and step.unknown.at == "B")
     assert pin.bodies == ("pin at B",)
     assert [str(symbol_of(one)) for one in pin.uses] == ["V_B,left", "V_B,right"]
+    assert pin.equation.name == "pin at B"
     assert pin.equation.about is None

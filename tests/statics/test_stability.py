@@ -161,6 +161,11 @@ def test_determinate_in_words() -> None:
     assert "two for each of 2 parts, one for each of 1 pin over a support" in found.reason
 
 
+def test_one_part_in_words() -> None:
+    found = classified(make_beam(10, [(0, "pin"), (10, "roller")]))
+    assert "2 independent equations (two for each of 1 part), by exact rank" in found.reason
+
+
 def test_rank_of_the_equations() -> None:
     """Numpy's rank of the equilibrium matrix, set up body by body, gives the same degree."""
     for supports, releases, degree in DEGREES.values():
