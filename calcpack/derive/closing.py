@@ -9,6 +9,9 @@ from calcpack.derive.steps import STEP, Step, number_text
 from calcpack.exact.formula import Leaf, evaluate, gradient, leaves
 from calcpack.exact.numbers import MOST_SIGNIFICANT_DIGITS, significant_digits
 
+SHOWN_DIGITS = 4
+"""Significant digits that the largest number of a column shows at least."""
+
 
 def closing_decimals(
     steps: Sequence[Step], start: Mapping[str, int | None]
@@ -37,6 +40,8 @@ def closing_decimals(
             members.setdefault(step.column, {})[origin] = step.value
             decimals[origin] = _fitting(step.value, decimals[origin])
     columns = {STEP + step.key: members[step.column] for step in steps}
+    for column in members.values():
+        _show_small_numbers(column, decimals)
     changed = True
     while changed:
         changed = False
@@ -83,6 +88,17 @@ def _weakest(step: Step, decimals: Mapping[str, int | None]) -> str:
 
 def _value(step: Step, origin: str) -> Fraction:
     return next(leaf.value for leaf in leaves(step.formula) if leaf.origin == origin)
+
+
+def _show_small_numbers(column: Mapping[str, Fraction], decimals: dict[str, int | None]) -> None:
+    """Give a column whose numbers are all small enough decimals for four digits of the largest."""
+    largest = max(map(abs, column.values()))
+    needed = SHOWN_DIGITS
+    while largest and largest * 10 ** (needed - SHOWN_DIGITS + 1) < 1:
+        needed += 1
+    if 0 < largest < 1:
+        for origin, value in column.items():
+            decimals[origin] = _refined(value, decimals[origin], needed)
 
 
 def _fitting(value: Fraction, decimals: int | None) -> int | None:

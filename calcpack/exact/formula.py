@@ -9,7 +9,6 @@ from typing import Literal
 
 from calcpack.exact.numbers import decimals_to_end, printed
 
-
 MOST_DECIMALS = 12
 """A constant that ends within so many decimals is written as a decimal, else as a fraction."""
 

@@ -36,13 +36,13 @@ def executed(notebook: NotebookNode, folder: Path) -> NotebookNode:
     where = {"metadata": {"path": str(folder)}}
     client = NotebookClient(fresh, timeout=LONGEST_CELL, resources=where)
     # A module of the engineer's own, imported from the folder, must leave no compiled copy there.
-    # What the kernel says on its own account has no place in our output.
     environment = {**os.environ, "PYTHONDONTWRITEBYTECODE": "1"}
     try:
+        # What the kernel itself has to say is no output of a cell.
         with client.setup_kernel(env=environment, stdout=DEVNULL, stderr=DEVNULL):
             for index, cell in enumerate(fresh.cells):
                 _run(client, cell, index)
-    except (NoSuchKernel, RuntimeError) as error:
+    except (NoSuchKernel, OSError, RuntimeError) as error:
         raise OutputFailed(f"calculation.ipynb: no kernel to run its cells: {error}") from error
     return fresh
 

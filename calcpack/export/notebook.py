@@ -11,7 +11,7 @@ from dataclasses import dataclass
 from nbformat import NotebookNode
 
 from calcpack.errors import Problem
-from calcpack.intake.shown import shown
+from calcpack.intake.shown import shown, unprintable
 from calcpack.render.markdown import SHEET_MIME, stamp
 from calcpack.results import DIGEST_SHOWN
 from calcpack.sheets.lettering import has_glyph
@@ -22,7 +22,7 @@ CALL = 'calcpack.sheet("NAME")'
 
 @dataclass(frozen=True)
 class SheetCall:
-    """A cell that shows one sheet; None: a sheet that the notebook leaves out."""
+    """A sheet, and the cell that shows it; None where the notebook leaves the sheet out."""
 
     name: str
     index: int | None
@@ -57,7 +57,7 @@ def parts_of(notebook: NotebookNode) -> tuple[list[Part], list[Problem]]:
         elif found is not None:
             parts.append(found)
         if isinstance(found, OwnCell) and cell.cell_type == "markdown":
-            problems += _without_glyph(path, cell.source)
+            problems += _unprintable(path, cell.source)
     left_out = [SheetCall(name, None) for name in SHEET_NAMES if name not in _names(parts)]
     return parts + left_out, problems
 
@@ -70,20 +70,19 @@ def forged_outputs(notebook: NotebookNode, parts: Sequence[Part], digest: str) -
         parts: its cells, as ``parts_of`` reads them.
         digest: of data and results as they are now.
     """
+    called = {part.index: part.name for part in parts if isinstance(part, SheetCall)}
     problems = []
-    for part in parts:
-        if part.index is None:
-            continue
-        for place, output in enumerate(notebook.cells[part.index].get("outputs", ())):
+    for index, cell in enumerate(notebook.cells):
+        for place, output in enumerate(cell.get("outputs", ())):
             if SHEET_MIME not in output.get("data", {}):
                 continue
             said = output.data[SHEET_MIME]
-            path = f"{cell_path(part.index)}.outputs[{place}]"
-            if isinstance(part, OwnCell):
-                needs = f"must come from {CALL} in a cell of its own"
+            path = f"{cell_path(index)}.outputs[{place}]"
+            if index not in called:
+                needs = f"must come from {CALL} alone in its cell"
                 problems.append(Problem(path, "a sheet's output", needs))
-            elif said not in (stamp(part.name, digest), stamp(part.name, None)):
-                due = f"must be of {part.name!r} with digest {digest[:DIGEST_SHOWN]}"
+            elif said not in (stamp(called[index], digest), stamp(called[index], None)):
+                due = f"must be of {called[index]!r} with digest {digest[:DIGEST_SHOWN]}"
                 problems.append(Problem(path, shown(said), f"{due}: run the cell again"))
     return problems
 
@@ -134,10 +133,10 @@ def _is_sheet(node: ast.AST) -> bool:
     return False
 
 
-def _without_glyph(path: str, source: str) -> Iterator[Problem]:
+def _unprintable(path: str, source: str) -> Iterator[Problem]:
     """Markdown may also name a character by its number, hence the text without such names."""
-    text = source + html.unescape(source)
-    missing = [one for one in text if one not in "\n\r\t" and not has_glyph(one)]
-    if missing:
-        needs = f"must do without U+{ord(missing[0]):04X}, which the package's fonts lack"
-        yield Problem(path, shown(source), needs)
+    for one in source + html.unescape(source):
+        if one not in "\n\r\t" and (unprintable(one) or not has_glyph(one)):
+            needs = f"must do without U+{ord(one):04X}, which cannot be printed"
+            yield Problem(path, shown(source), needs)
+            return

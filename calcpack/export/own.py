@@ -62,7 +62,7 @@ def _result(output: NotebookNode, index: int) -> Iterator[Block]:
             content = data[mime].encode() if kind == "svg" else _decoded(data[mime])
             said = output.metadata.get(mime, {}).get("alt")
             if content.startswith(begins):
-                yield Picture(content, kind, said or f"Picture put out by the code of cell {index}")
+                yield Picture(content, kind, said or f"Picture put out by cells[{index}]")
             else:
                 yield Paragraph(("[a picture that cannot be read]",))
             return

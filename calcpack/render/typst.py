@@ -9,6 +9,7 @@ from dataclasses import dataclass, field
 
 from calcpack.derive.steps import Derivation, Step, number_text
 from calcpack.exact.formula import PLAIN, Leaf, Notation, Symbol, Variable, symbols, write
+from calcpack.intake.shown import unprintable
 from calcpack.render.svg import to_svg
 from calcpack.render.tex import tex_to_typst
 from calcpack.sheets.blocks import (
@@ -175,13 +176,14 @@ def to_typst(parts: Sequence[Sheet | Block], derivation: Derivation) -> Source:
 
 
 def printable(text: str) -> str:
-    """The text with each character that no font has written as its code point.
+    """The text with each character that is unseen or that no font has as its code point.
 
     >>> printable("a\u4e2d")
     'a⟨U+4E2D⟩'
     """
     return "".join(
-        one if one in "\n\t" or has_glyph(one) else f"⟨U+{ord(one):04X}⟩" for one in text
+        one if one in "\n\t" or (has_glyph(one) and not unprintable(one)) else f"⟨U+{ord(one):04X}⟩"
+        for one in text
     )
 
 

@@ -7,7 +7,17 @@ from collections.abc import Iterator
 from calcpack.exact.numbers import decimals_to_end
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.loads import MovingLoad
-from calcpack.sheets.blocks import Block, Column, Heading, Paragraph, Table, Text, Value
+from calcpack.sheets.blocks import (
+    Block,
+    Column,
+    Figure,
+    Heading,
+    Paragraph,
+    Table,
+    Text,
+    Value,
+)
+from calcpack.sheets.signs_figure import signs_figure
 from calcpack.solution import Solution
 
 SIGNS = (
@@ -33,9 +43,15 @@ METHODS = (
     ),
     ("Influence lines", "equilibrium of free bodies cut at releases and sections"),
     (
+        "Redundants",
+        "force method with exact flexibilities (principle of virtual forces), load terms by "
+        "reciprocity of displacements; needed only where the beam is indeterminate",
+    ),
+    (
         "Placement of loads",
-        "the effect of a train is straight between events, where an axle meets a breakpoint of "
-        "the line or an end of the beam; every event is evaluated, on both sides",
+        "the effect of a train is one polynomial between events, where an axle meets a breakpoint "
+        "of the line or an end of the beam; events are evaluated on both sides, and for curved "
+        "lines the places between them where the rate of change is zero",
     ),
     ("Kinematic statement", "Müller-Breslau's principle, in exact fractions"),
     ("Stiffness solution", "displacement method with Euler-Bernoulli elements, in floating point"),
@@ -49,6 +65,7 @@ LINES_HOLD = (
     "Influence lines hold only while every bearing stays down or is anchored. Bending alone is "
     "considered; equilibrium of a determinate beam does not depend on its stiffness."
 )
+NAMED_UNITS = ("length", "force", "line load", "moment", "deflection", "rotation", "EI")
 
 
 def basis_blocks(solution: Solution) -> tuple[Block, ...]:
@@ -61,6 +78,7 @@ def basis_blocks(solution: Solution) -> tuple[Block, ...]:
         Heading(2, ("Assumptions",)),
         *_assumptions(solution),
         Heading(2, ("Signs and units",)),
+        Figure(signs_figure()),
         Table(
             (Column("quantity", width=2), Column("sign", width=3)),
             tuple(((what,), (sign,)) for what, sign in SIGNS),
@@ -139,7 +157,7 @@ def _assumptions(solution: Solution) -> Iterator[Block]:
 
 def _units(system: str) -> str:
     units = SYSTEMS[system]
-    listed = ", ".join(f"{kind} {unit}" for kind, unit in units.items() if unit)
+    listed = ", ".join(f"{kind} {units[kind]}" for kind in NAMED_UNITS)
     exact = (
         "Units are converted exactly: 1 in = 25.4 mm, 1 lb = 4.4482216152605 N, 1 kip = 1000 lb."
     )

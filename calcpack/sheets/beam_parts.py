@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Collection, Iterable, Iterator
 from fractions import Fraction
 
@@ -76,6 +77,12 @@ def _support(support: Support, x: float, size: float, beam: Beam) -> Iterator[It
             for side in (-1, 1):
                 plate = _rectangle(x - 1.8 * size, side * 0.45, x + 1.8 * size, side * 2.8)
                 yield Polygon(plate, "hatch", "medium")
+        case "spring":
+            if support.vertical:
+                yield Line(_zigzag(x, top, 3.6 * size, size), "thin")
+                yield from _ground(x, top + 3.6 * size, size)
+            if support.rotational:
+                yield Line(_spiral(x), "thin")
         case "guided" if at_end:
             yield Line(_upright(x, -2.8, 2.8), "medium")
             for y in (-1.6, 1.6):
@@ -88,6 +95,26 @@ def _support(support: Support, x: float, size: float, beam: Beam) -> Iterator[It
                 for hand in (-1.0, 1.0):
                     ends = sorted((side * 0.9, side * 3.2))
                     yield from _wall(x + hand * 1.3 * size, hand, *ends)
+
+
+def _zigzag(x: float, top: float, height: float, size: float) -> tuple[tuple[float, float], ...]:
+    """A coil spring that stands under the beam."""
+    turns = 6
+    inner = (
+        (x + (-1.0) ** step * 1.1 * size, top + height * (step + 0.5) / turns)
+        for step in range(turns)
+    )
+    return ((x, top), *inner, (x, top + height))
+
+
+def _spiral(x: float) -> tuple[tuple[float, float], ...]:
+    """A spiral spring about the beam's axis."""
+    steps = 36
+    angles = ((step / steps, 3 * math.pi * step / steps) for step in range(steps + 1))
+    return tuple(
+        (x + (0.8 + 1.6 * part) * math.cos(turn), (0.8 + 1.6 * part) * math.sin(turn))
+        for part, turn in angles
+    )
 
 
 def _ground(x: float, y: float, size: float) -> Iterator[Item]:

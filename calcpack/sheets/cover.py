@@ -15,12 +15,12 @@ from calcpack.sheets.blocks import (
 from calcpack.solution import Solution
 
 COVERS = (
-    "This package finds, for one statically determinate straight beam, the influence lines of the "
+    "This package finds, for one straight beam, the influence lines of the "
     "effects asked for, where the travelling loads have to stand, and what they then cause; every "
     "equation is printed with its numbers."
 )
 NOT_COVERED = (
-    "Not covered: permanent loads, combinations and resistances; section capacity, skew, curvature "
+    "Not covered: permanent loads but settlements, combinations and resistances; section capacity, skew, curvature "
     "and grillage action, frames, trusses, arches and cables, lift-off, shear deformation, "
     "braking, centrifugal and seismic forces, semi-rigid releases."
 )

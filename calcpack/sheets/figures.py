@@ -166,7 +166,7 @@ def placement_figure(
     ]
     legend, on_beam, words, on_line = placed
     load = f"a load heading {heading}" if axles else "uniform load"
-    name = f"{_headed(title, unit)} under {load}"
+    name = f"{title[:1].upper()}{_headed(title, unit)[1:]} under {load}"
     return Drawing(
         (*on_line, *drops, *on_beam, *words, *legend),
         width,

@@ -41,6 +41,8 @@ from calcpack.statics.system import key_of, symbol_of
 
 BODY_WIDTH = 74.0
 """Width of a free body beside its equations, in mm."""
+DRAWN_DECIMALS = 6
+"""Most decimals of an ordinate in a figure."""
 MOST_ROWS = 200
 """A longer table of ordinates is printed without the numbers of each row."""
 
@@ -209,7 +211,8 @@ def _drawn(solution: Solution, areas: AreaGroup, ordinates: tuple[Step, ...]) ->
     calculation, effect = solution.calculation, areas.effect
     unit = SYSTEMS[calculation.units][LINE_KIND[effect.kind]]
     line = next(found.line for found in solution.lines if found.effect == effect)
-    decimals = max(result_of(solution, step).decimals or 4 for step in ordinates)
+    most = max(result_of(solution, step).decimals or 0 for step in ordinates)
+    decimals = min(most, DRAWN_DECIMALS)
     yield Heading(2, ("Line and areas: ", effect_title(effect)), areas.number)
     between = "straight" if line.degree < 2 else "a cubic, curved as found above,"
     words = (

@@ -10,6 +10,7 @@ from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Ta
 from calcpack.sheets.figures import beam_figure
 from calcpack.sheets.tables import effect_title
 from calcpack.solution import Solution
+from calcpack.statics.system import place_name, symbol_of
 
 WORDS = (
     "The lines were found again by two other methods, in the same program and from the same input: "
@@ -22,8 +23,12 @@ WORDS = (
 )
 BY_HAND = (
     "For a check without sight of the derivation: from the data alone, find each quantity for the "
-    "load at each station by a method of your own, then compare with the sheets named at the right."
+    "load at each station by a method of your own, then compare with the tables of ordinates."
 )
+
+
+EFFECTS_ACROSS = 4
+"""Effects beside each other in a table of the worksheet."""
 
 
 def method_blocks(solution: Solution) -> tuple[Block, ...]:
@@ -81,20 +86,17 @@ def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
         Paragraph((BY_HAND,)),
         Figure(beam_figure(calculation.beam, calculation.units)),
     ]
-    stations = calculation.beam.stations
-    columns = (
-        Column("effect", width=4),
-        Column("load at", width=3),
-        Column("found by hand", width=3),
-        Column("on the sheets", width=3),
-        Column("agrees", width=1),
-    )
-    for line in solution.lines:
-        unit = units[LINE_KIND[line.effect.kind]]
-        title = effect_title(line.effect) + (f", {unit}" if unit else "")
-        rows = tuple(
-            ((title if not n else "",), (station.name or str(station.at),), ("",), ("",), ("",))
-            for n, station in enumerate(stations)
-        )
-        blocks.append(Table(columns, rows))
+    stations = [
+        station.name or place_name(calculation.beam, station.at)
+        for station in calculation.beam.stations
+    ]
+    for start in range(0, len(solution.lines), EFFECTS_ACROSS):
+        lines = solution.lines[start : start + EFFECTS_ACROSS]
+        columns = [Column("load at", width=2)]
+        for line in lines:
+            unit = units[LINE_KIND[line.effect.kind]]
+            name = str(symbol_of(line.effect))
+            columns.append(Column(f"{name}, {unit}" if unit else name, width=3))
+        rows = tuple(((place,), *(("",) for _ in lines)) for place in stations)
+        blocks.append(Table(tuple(columns), rows))
     return tuple(blocks)

@@ -6,9 +6,10 @@ from collections.abc import Iterator
 from fractions import Fraction
 
 from calcpack.derive.kinds import DECIMALS, LINE_KIND
-from calcpack.derive.steps import PlacementGroup, TrainGroup
+from calcpack.derive.steps import PlacementGroup, Step, TrainGroup
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.loads import MovingLoad
+from calcpack.model.request import Effect
 from calcpack.moving.critical import Candidate, Governing, total_effect
 from calcpack.sheets.blocks import (
     Block,
@@ -22,8 +23,10 @@ from calcpack.sheets.blocks import (
     Value,
 )
 from calcpack.sheets.figures import placement_figure
+from calcpack.sheets.summary_figure import summary_figure
 from calcpack.sheets.tables import effect_title, result_of, step_table
 from calcpack.solution import Solution
+from calcpack.statics.system import symbol_of
 
 SEARCHED = 9
 """Decimals of a place found where the rate of change is zero."""
@@ -71,8 +74,34 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
                 "may stay away, so that no greatest value is below zero and no least above it.",
             )
         ),
+        *_sketch(solution),
         Table(columns, tuple(rows)),
     )
+
+
+def _sketch(solution: Solution) -> Iterator[Block]:
+    """The beam with the greatest and least value of each effect over all loads."""
+    units = SYSTEMS[solution.calculation.units]
+    extremes: dict[Effect, dict[int, Step]] = {}
+    for group in solution.derivation.groups:
+        if isinstance(group, PlacementGroup):
+            sense, step = group.governing.sense, group.steps[-1]
+            known = extremes.setdefault(group.effect, {}).setdefault(sense, step)
+            if sense * ((step.value or 0) - (known.value or 0)) > 0:
+                extremes[group.effect][sense] = step
+    entries = [
+        (
+            effect.station,
+            symbol_of(effect),
+            solution.derivation.result(found[1]),
+            solution.derivation.result(found[-1]),
+            units[found[1].kind],
+        )
+        for effect, found in extremes.items()
+    ]
+    if entries:
+        calculation = solution.calculation
+        yield Figure(summary_figure(calculation.beam, entries, calculation.units))
 
 
 def placement_blocks(solution: Solution) -> tuple[Block, ...]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import copy
 from pathlib import Path
 
 import nbformat
@@ -32,7 +33,7 @@ KERNEL = {"kernelspec": {"name": "python3", "display_name": "Python 3", "languag
 
 def make_folder(folder: Path, *cells: NotebookNode, calc: str = CALC) -> NotebookNode:
     """Write calc.toml and a notebook of the cells; the notebook is handed back."""
-    notebook: NotebookNode = new_notebook(cells=list(cells), metadata=KERNEL)
+    notebook: NotebookNode = new_notebook(cells=copy.deepcopy(list(cells)), metadata=KERNEL)
     (folder / "calc.toml").write_text(calc, encoding="utf-8")
     nbformat.write(notebook, folder / "calculation.ipynb")
     return notebook

@@ -33,7 +33,7 @@ def test_the_exporter_and_the_command_give_the_same_bytes(tmp_path: Path) -> Non
     }
     for cell in notebook.cells:  # the marks that the server gives to cells it trusts
         cell.metadata.trusted = True
-    pdf, found = PackageExporter().from_notebook_node(notebook, resources)
+    pdf, found = get_exporter("calcpack")().from_notebook_node(notebook, resources)
     assert found["output_extension"] == ".pdf"
     assert not {"outputs", "attachments"} & found.keys()
     assert notebook.cells[0].metadata.trusted
@@ -47,7 +47,7 @@ def test_preprocessors_cannot_take_a_cell_out(tmp_path: Path) -> None:
         return notebook, resources
 
     notebook = make_folder(tmp_path, *CELLS)
-    exporter = PackageExporter()
+    exporter = get_exporter("calcpack")()
     exporter.register_preprocessor(empty, enabled=True)
     pdf, _ = exporter.from_notebook_node(notebook, {"metadata": {"path": str(tmp_path)}})
     assert text_of(pdf).count("OWN-WORDS") == 1
@@ -58,14 +58,16 @@ def test_the_folder_defaults_to_the_current_one(
 ) -> None:
     notebook = make_folder(tmp_path, *CELLS)
     monkeypatch.chdir(tmp_path)
-    pdf, _ = PackageExporter().from_notebook_node(notebook)
+    pdf, _ = get_exporter("calcpack")().from_notebook_node(notebook)
     assert pdf == issue(notebook, tmp_path)
 
 
 def test_problems_reach_the_caller_as_lines(tmp_path: Path) -> None:
     notebook = make_folder(tmp_path, *CELLS, calc=CALC.replace("length = 9.0", "length = -9.0"))
     with pytest.raises(InputRefused) as caught:
-        PackageExporter().from_notebook_node(notebook, {"metadata": {"path": str(tmp_path)}})
+        get_exporter("calcpack")().from_notebook_node(
+            notebook, {"metadata": {"path": str(tmp_path)}}
+        )
     # The server shows the error's text as it is.
     assert str(caught.value).startswith("beam.length: -9.0 m, must be above 0 m")
 

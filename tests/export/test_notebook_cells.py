@@ -89,12 +89,19 @@ def test_unknown_and_doubled_sheets_are_refused_together() -> None:
     assert second == "calculation.ipynb: cells[2]: sheet 'cover', must stand only once"
 
 
-def test_a_character_without_a_glyph_is_refused_also_by_its_number() -> None:
-    assert refused(new_markdown_cell("a \u4e2d b"), new_markdown_cell("&#x4e2d;")) == [
-        "calculation.ipynb: cells[0]: a \u4e2d b, "
-        "must do without U+4E2D, which the package's fonts lack",
-        "calculation.ipynb: cells[1]: &#x4e2d;, "
-        "must do without U+4E2D, which the package's fonts lack",
+@pytest.mark.parametrize(
+    ("source", "said", "code"),
+    [
+        ("a \u4e2d b", "a \u4e2d b", "4E2D"),
+        ("&#x4e2d;", "&#x4e2d;", "4E2D"),
+        ("pay 100\u202e 001", "pay 100\\u202e 001", "202E"),
+        ("&#8203;", "&#8203;", "200B"),
+        ("bell\x07", "bell\\x07", "0007"),
+    ],
+)
+def test_a_character_that_cannot_be_printed_is_refused(source: str, said: str, code: str) -> None:
+    assert refused(new_markdown_cell(source)) == [
+        f"calculation.ipynb: cells[0]: {said}, must do without U+{code}, which cannot be printed"
     ]
 
 
@@ -138,8 +145,9 @@ def test_a_foreign_output_is_refused(data: object, tmp_path: Path) -> None:
     assert problem.needs == needs
 
 
-def test_a_forged_output_on_a_cell_of_the_engineers_own_is_refused(tmp_path: Path) -> None:
-    forged = new_code_cell("1 + 1", outputs=[sheet_output(stamp("cover", DIGEST))])
+@pytest.mark.parametrize("source", ["1 + 1", "import calcpack", ""])
+def test_a_sheets_output_on_any_other_cell_is_refused(source: str, tmp_path: Path) -> None:
+    forged = new_code_cell(source, outputs=[sheet_output(stamp("cover", DIGEST))])
     notebook = make_folder(tmp_path, forged)
     with pytest.raises(InputRefused) as caught:
         issued_text(notebook, tmp_path)

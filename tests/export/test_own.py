@@ -80,7 +80,7 @@ def test_the_richest_kind_of_output_that_can_be_printed_is_shown() -> None:
     (found,) = shown(data(text_plain="p", text_markdown="*m*"))
     assert found == Paragraph((Styled(("m",), "emphasis"),))
     (found,) = shown(data(text_plain="p", image_png=picture))
-    assert found == Picture(png(2, 2), "png", "Picture put out by the code of cell 7")
+    assert found == Picture(png(2, 2), "png", "Picture put out by cells[7]")
     (found,) = shown(new_output("display_data", {"image/svg+xml": svg, "image/png": picture}))
     assert isinstance(found, Picture)
     assert (found.content, found.kind) == (svg.encode(), "svg")

@@ -55,7 +55,8 @@ def compiled(*formulas: str) -> bytes:
 
 def test_any_formula_of_the_subset_compiles_and_keeps_its_letters() -> None:
     chosen = random.Random(11)
-    formulas, due = [], ""
+    formulas: list[str] = []
+    due = ""
     while len(formulas) < 300:
         pieces = chosen.choices(PIECES, k=chosen.randint(1, 8))
         math = tex_to_typst(" ".join(tex for tex, _ in pieces))

@@ -140,6 +140,6 @@ def test_a_picture_fits_on_the_page(kind: str, size: tuple[int, int]) -> None:
     assert (right - left) / (bottom - top) == pytest.approx(width / height, rel=0.1)
 
 
-def test_a_character_without_a_glyph_is_written_as_its_number() -> None:
-    assert printable("a\u4e2d\x07\nb") == "a⟨U+4E2D⟩⟨U+0007⟩\nb"
+def test_a_character_that_cannot_be_seen_is_written_as_its_number() -> None:
+    assert printable("a\u4e2d\x07\nb\u202e") == "a⟨U+4E2D⟩⟨U+0007⟩\nb⟨U+202E⟩"
     assert lines_of(Preformatted("a\u4e2d")) == ["a⟨U+4E2D⟩"]

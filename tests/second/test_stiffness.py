@@ -2,49 +2,94 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable, Sequence
 from fractions import Fraction
 from random import Random
 
 import numpy as np
 import pytest
-from beams import effects_of, make_beam, random_beam
+from beams import degree, effects_of, make_beam, movements_of, random_beam, random_indeterminate
 
 from calcpack.errors import ProgramFault
-from calcpack.exact.piecewise import Piecewise
+from calcpack.exact.piecewise import Side
 from calcpack.model.beam import Beam, Face
 from calcpack.model.request import Effect, EffectKind
-from calcpack.second import stiffness
+from calcpack.second import balance
 from calcpack.second.kinematic import influence_line
-from calcpack.second.stiffness import Ordinates, ordinates
+from calcpack.second.stiffness import Floats, Ordinates, ordinates
+
+SIDES: tuple[Side, ...] = ("left", "right")
 
 
 def found(beam: Beam, kind: EffectKind, at: str, face: Face | None = None) -> Ordinates:
     return ordinates(beam, [Effect(kind, at, beam.station(at).at, face)])[0]
 
 
-def exact(beam: Beam, line: Piecewise) -> Ordinates:
-    stations = [station.at for station in beam.stations]
-    left, right = (np.array([float(side(x)) for x in stations]) for side in (line.left, line.right))
-    return Ordinates(np.array([float(x) for x in stations]), left, right)
+def both_sides(read: Callable[[Fraction, Side], Fraction], stations: Sequence[Fraction]) -> Floats:
+    return np.array([[float(read(at, side)) for at in stations] for side in SIDES])
 
 
 def assert_agrees(beam: Beam, tolerance: float = 1e-9) -> None:
-    effects = effects_of(beam)
+    """Values and slopes on both sides of every station, relative to the largest."""
+    effects = (*effects_of(beam), *movements_of(beam))
+    stations = [station.at for station in beam.stations]
     assert len(effects) > 4
     for effect, line, other in zip(
         effects, influence_line(beam, effects), ordinates(beam, effects), strict=True
     ):
-        expected = exact(beam, line)
-        scale = max(np.abs(expected.left).max(), np.abs(expected.right).max(), 1e-30)
-        np.testing.assert_array_equal(other.stations, expected.stations)
-        for side in ("left", "right"):
-            off = np.abs(getattr(other, side) - getattr(expected, side)) / scale
-            assert off.max() < tolerance, (effect, side)
+        np.testing.assert_array_equal(other.stations, [float(at) for at in stations])
+        for read, found in (
+            (line.value, np.array([other.left, other.right])),
+            (line.slope, np.array([other.left_slopes, other.right_slopes])),
+        ):
+            expected = both_sides(read, stations)
+            scale = max(np.abs(expected).max(), 1e-30)
+            assert np.abs(found - expected).max() / scale < tolerance, effect
 
 
 @pytest.mark.parametrize("seed", range(40))
 def test_agrees_with_the_kinematic_statement(seed: int) -> None:
     assert_agrees(random_beam(Random(seed)))
+
+
+@pytest.mark.parametrize("seed", range(20))
+def test_agrees_with_the_kinematic_statement_on_an_indeterminate_beam(seed: int) -> None:
+    assert_agrees(random_indeterminate(Random(seed)))
+
+
+@pytest.mark.parametrize("seed", range(5))
+def test_between_stations(seed: int) -> None:
+    beam = random_indeterminate(Random(seed))
+    effects = (*effects_of(beam), *movements_of(beam))
+    places = [beam.length * part / 97 for part in range(98)]
+    for effect, line, other in zip(
+        effects, influence_line(beam, effects), ordinates(beam, effects), strict=True
+    ):
+        expected = np.array([float(line.right(at)) for at in places])
+        scale = max(np.abs(expected).max(), 1e-30)
+        at = np.array([float(place) for place in places])
+        np.testing.assert_allclose(
+            other.values(at), expected, atol=1e-12 * scale, err_msg=effect.at
+        )
+        beyond = other.values(np.array([-1e-9, float(beam.length) + 1e-9]))
+        np.testing.assert_array_equal(beyond, 0)
+
+
+def test_random_indeterminate_beams_are_of_every_sort() -> None:
+    sample = [random_indeterminate(Random(seed)) for seed in range(200)]
+    assert {1, 2, 3, 4, 5, 6} <= {degree(beam) for beam in sample}
+    assert {len(beam.releases) for beam in sample} == {0, 1, 2, 3}
+    assert {0, 2, 3, 7} <= {len(beam.stiffness) for beam in sample}
+    stations = [station for beam in sample for station in beam.stations]
+    kinds = {one.support.kind for one in stations if one.support}
+    assert kinds == {"pin", "roller", "fixed", "guided", "spring"}
+    inner = [one.support for one in stations if one.support and one.release]
+    springs = [one for one in inner if one.kind == "spring"]
+    assert {(bool(one.vertical), bool(one.rotational)) for one in springs} == {
+        (True, False), (False, True), (True, True)
+    }  # fmt: skip
+    assert {one.face for one in springs} == {None, "left", "right"}
+    assert any(beam.supports[0].at > 0 for beam in sample)
 
 
 def test_random_beams_are_of_every_sort() -> None:
@@ -79,11 +124,30 @@ def test_shortest_pieces_that_can_be_typed() -> None:
     assert_agrees(beam)
 
 
+def test_forty_short_stretches_of_different_stiffness() -> None:
+    """Forty of half a millimetre each in the middle of one of two spans of thirty metres."""
+    steps = [(15 + Fraction(step, 2000), 1000 + 37 * (step * step % 11)) for step in range(41)]
+    beam = make_beam(60, [(0, "pin"), (30, "roller"), (60, "roller")], (), [7], [(0, 900), *steps])
+    assert_agrees(beam)
+
+
+def test_stiffnesses_far_apart() -> None:
+    """Rigid and limp parts on springs, hard and soft, by all that can be typed."""
+    beam = make_beam(
+        20,
+        [(0, "spring", None, "1e12", "1e-9"), (9, "spring", None, "1e-9", 0), (20, "fixed")],
+        [(14, "hinge")],
+        [5],
+        [(0, "1e12"), (10, "1e-9"), (17, 3)],
+    )
+    assert_agrees(beam)
+
+
 def test_refinement_restores_what_the_factors_lost(monkeypatch: pytest.MonkeyPatch) -> None:
     beam = random_beam(Random(3))
-    monkeypatch.setattr(stiffness, "FACTOR_DIGITS", 30)
+    monkeypatch.setattr(balance, "GUARD_DIGITS", 30)
     assert_agrees(beam, 1e-15)
-    monkeypatch.setattr(stiffness, "ROUNDS", 1)
+    monkeypatch.setattr(balance, "ROUNDS", 1)
     with pytest.raises(ProgramFault):
         assert_agrees(beam)
 
@@ -121,6 +185,24 @@ def test_two_equal_spans() -> None:
     reaction = found(beam, "reaction", "A").left
     np.testing.assert_allclose(shear.left[:5], reaction[:5] - 1, atol=1e-15)
     assert (shear.left[4], shear.right[4]) == (-1, 0)
+
+
+def test_cantilever_on_a_spring() -> None:
+    """Handbook: the tip sinks by a² (3 L - a) / (6 EI), and more where a spring stands under it:
+    its force X = k times the sinking that is left."""
+    length, bending, stiffness = 5, 700, 40
+    a = np.array([0, 2, 3, 5])
+    free = a**2 * (3 * length - a) / (6 * bending)
+    flexibility = length**3 / (3 * bending)
+    beam = make_beam(
+        length,
+        [(0, "fixed"), (length, "spring", None, stiffness, 0)],
+        sections=[2, 3],
+        stiffness=[(0, bending)],
+    )
+    sinking = free / (1 + stiffness * flexibility)
+    np.testing.assert_allclose(found(beam, "deflection", "B").left, sinking)
+    np.testing.assert_allclose(found(beam, "reaction", "B").right, stiffness * sinking)
 
 
 @pytest.mark.parametrize(
