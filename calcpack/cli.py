@@ -7,6 +7,7 @@ import os
 import sys
 import tempfile
 from collections.abc import Sequence
+from datetime import date
 from pathlib import Path
 
 from calcpack.errors import CalcpackError, Disagreement, InputRefused, OutputFailed, Problem
@@ -58,8 +59,6 @@ def _parser() -> argparse.ArgumentParser:
 
 
 def _new(chosen: argparse.Namespace) -> None:
-    from datetime import date
-
     from calcpack.export.new import new_folder
 
     new_folder(chosen.folder, chosen.like, date.today())
@@ -78,8 +77,9 @@ def _solve(chosen: argparse.Namespace) -> None:
 
 def _issue(chosen: argparse.Namespace) -> None:
     import nbformat
+    from tqdm import tqdm
 
-    from calcpack.export.issue import issue
+    from calcpack.export.issue import PHASES, issue
     from calcpack.export.templates import template_folder
 
     own = chosen.folder / "calculation.ipynb"
@@ -89,7 +89,14 @@ def _issue(chosen: argparse.Namespace) -> None:
     except (ValueError, nbformat.ValidationError) as error:
         needs = "must be a notebook of format 4"
         raise InputRefused([Problem("calculation.ipynb", type(error).__name__, needs)]) from error
-    _write(chosen.out or chosen.folder / "package.pdf", issue(notebook, chosen.folder))
+    with tqdm(total=PHASES, disable=None, leave=False, bar_format="{bar:20} {desc}") as bar:
+
+        def report(phase: str) -> None:
+            bar.set_description_str(phase)
+            bar.update()
+
+        package = issue(notebook, chosen.folder, report)
+    _write(chosen.out or chosen.folder / "package.pdf", package)
 
 
 def _write(path: Path, content: bytes) -> None:

@@ -10,6 +10,9 @@ from fractions import Fraction
 
 from beams import Place
 
+from calcpack.elastic.compatibility import force_method
+from calcpack.elastic.redundants import redundants_by_rule
+from calcpack.elastic.released import release
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.beam import (
     Beam,
@@ -27,6 +30,7 @@ from calcpack.model.loads import Axle, Heading, MovingLoad, Relieving
 from calcpack.model.request import Calculation, Cover, Effect, EffectKind, Package, Signature
 from calcpack.statics.influence import effect_line, unknown_lines
 from calcpack.statics.plan import plan_of_solution
+from calcpack.statics.stability import classify
 from calcpack.statics.system import cut_into_bodies
 
 COVER = Cover("Ferry ramp girder", "FR-12", prepared=Signature("P. Linden", date(2026, 4, 7)))
@@ -92,6 +96,12 @@ def make_calculation(
     values: dict[str, Fraction] = {}
     for station in beam.stations:
         values |= _typed(beam, station.at, station.source)
+    for support in beam.supports:
+        if support.kind == "spring":
+            values[f"{support.path}.vertical"] = support.vertical
+            values[f"{support.path}.rotational"] = support.rotational
+    for stretch in beam.stiffness:
+        values[f"{stretch.path}.EI"] = stretch.EI
     for load in loads:
         for i, axle in enumerate(load.axles):
             values[f"{load.path}.axles[{i}].weight"] = axle.weight
@@ -126,14 +136,17 @@ def make_effect(beam: Beam, kind: EffectKind, at: str, face: Face | None = None)
 
 
 def lines_of(beam: Beam, effects: Sequence[Effect]) -> list[Piecewise]:
-    """The influence line of each effect, by statics."""
-    system = cut_into_bodies(beam)
-    unknowns = unknown_lines(beam, plan_of_solution(beam, system))
+    """The influence line of each effect, by statics and where needed by the force method."""
+    degree = classify(beam, cut_into_bodies(beam)).degree
+    system = cut_into_bodies(beam, redundants_by_rule(beam, degree))
+    plan = plan_of_solution(beam, system)
+    method = force_method(release(beam, system, plan, [])) if degree else None
+    unknowns = unknown_lines(beam, plan, method.lines if method else None)
     return [effect_line(beam, system, unknowns, effect)[0] for effect in effects]
 
 
 def line_of(beam: Beam, kind: EffectKind, at: str, face: Face | None = None) -> Piecewise:
-    """The influence line of the effect at a named place, by statics."""
+    """The influence line of the effect at a named place."""
     return lines_of(beam, [make_effect(beam, kind, at, face)])[0]
 
 

@@ -1,4 +1,4 @@
-"""Every published value that a determinate beam under this release's loads can be held to.
+"""Every published value that a beam under this release's loads can be held to.
 
 The values, their sources and tolerances stand in ``calcpack/reference/published.toml`` alone; the
 axles of a named vehicle come from its own case there.
@@ -13,7 +13,7 @@ from collections.abc import Callable, Iterator
 from decimal import Decimal
 from fractions import Fraction
 from importlib.resources import files
-from typing import Any
+from typing import Any, Literal
 
 import pytest
 from beams import make_beam
@@ -34,10 +34,18 @@ CASES: dict[str, Case] = {
         parse_float=Decimal,
     )["case"]
 }
-LINES = [name for name, case in CASES.items() if case["item"] == 1]
+LINES = [name for name, case in CASES.items() if case["kind"] == "influence-line"]
+PLACED = [
+    name
+    for name, case in CASES.items()
+    if case["item"] == 2 and case["kind"] in ("continuous-point-load", "closed-form")
+]
+COEFFICIENTS = [
+    name for name, case in CASES.items() if case["kind"] == "continuous-udl-coefficient"
+]
 COUNTED = {1: 14, 2: 22, 3: 18, 5: 56, 6: 2, 7: 2}
-"""Cases by item: 1 lines and 3 moving loads of determinate beams are covered here; 2 are
-indeterminate, 5 to 7 define load models, deck shares and ratings: not of this release."""
+"""Cases by item: lines of determinate beams 1 and indeterminate ones 2, and moving loads 3 are held
+to here; 5 to 7 define load models, deck shares and ratings, none of which this release computes."""
 
 TABLES: dict[str, Callable[[Fraction], Fraction]] = {
     "hs20-simple-M-b": lambda span: max(
@@ -177,20 +185,81 @@ def absolute_moment(span: Fraction, load: MovingLoad) -> Fraction:
     return greatest(moment_line(span, section), load)
 
 
-@pytest.mark.parametrize("name", LINES)
-def test_influence_line(name: str) -> None:
-    case = CASES[name]
-    geometry, at = case["geometry"], exact(case["at"])
+def stated(case: Case, sections: list[Fraction]) -> Beam:
+    """The beam of a case that gives its supports and hinges, with sections where none stands."""
+    geometry = case["geometry"]
     assert geometry["x_start"] == 0
     supports = [(exact(one["x"]), one["type"]) for one in geometry["supports"]]
     hinges: list[tuple[Fraction, Any]] = [(exact(x), "hinge") for x in geometry["hinges"]]
-    beam = make_beam(exact(geometry["x_end"]), supports, hinges, [at])
+    return make_beam(exact(geometry["x_end"]), supports, hinges, sorted({*sections}))
+
+
+@pytest.mark.parametrize("name", LINES)
+def test_influence_line(name: str) -> None:
+    case = CASES[name]
+    at = exact(case["at"])
+    beam = stated(case, [at])
     line = line_of(beam, case["response"], beam.station(at).name)
     loads = case["load"]["load_x"]
     sides = case["load"].get("load_side", [""] * len(loads))
     for x, side, published in zip(loads, sides, case["published"], strict=True):
         ordinate = line.value(exact(x), "right" if side == "+" else "left")
         assert abs(ordinate - exact(published)) <= exact(case["tolerance"]), (named(case), x, side)
+
+
+@pytest.mark.parametrize("name", PLACED)
+def test_indeterminate_beam_under_one_load(name: str) -> None:
+    """A point load, or a uniform load over all of the beam; the published digits are rounded."""
+    case = CASES[name]
+    places = [exact(at) for at in case["at"]]
+    beam = stated(case, places)
+    responses = case["response"].split(", ")
+    tolerance = max(exact(case["tolerance"]), Fraction(1, 2 * 10**6))
+    for response, at, published in zip(responses, places, case["published"], strict=True):
+        kind = "reaction" if response.startswith("R") else "moment"
+        line = line_of(beam, "reaction" if kind == "reaction" else "moment", beam.station(at).name)
+        if "uniform" in case["load"]["type"]:
+            found = line.integral(Fraction(0), beam.length) * exact(case["load"]["intensity"])
+        else:
+            found = line.left(exact(case["load"]["load_x"][0]))
+        assert abs(found - exact(published)) <= tolerance, (named(case), response)
+
+
+def continuous(spans: list[Fraction], sections: tuple[Fraction, ...] = ()) -> Beam:
+    stations = list(itertools.accumulate(spans, initial=Fraction(0)))
+    return make_beam(stations[-1], [(at, "pin") for at in stations], sections=sections)
+
+
+@pytest.mark.parametrize("name", COEFFICIENTS)
+def test_coefficients_of_continuous_beams(name: str) -> None:
+    """Of w l² and w l: span 1 loaded, by its own length; or all of equal spans of length 1."""
+    case = CASES[name]
+    relative = case["geometry"]["spans_relative"]
+    if "span 1" in case["load"]["type"]:
+        first, second = map(exact, relative[:2])
+        for index, ratio in enumerate(case["param_values"]):
+            beam = continuous([first, second, second * exact(ratio)])
+            for place, published in zip(case["at"], case["published"], strict=True):
+                area = line_of(beam, "moment", place).integral(Fraction(0), first)
+                missing = area / first**2 - exact(published[index])
+                assert abs(missing) <= exact(case["tolerance"]), (named(case), place, ratio)
+        return
+    spans = [exact(span) for span in relative]
+    beam = continuous(spans)
+    names = [support.name for support in beam.supports]
+
+    def under_all(kind: Literal["moment", "reaction"], beam: Beam, place: str) -> Fraction:
+        return line_of(beam, kind, place).integral(Fraction(0), beam.length)
+
+    hogging, reactions, sagging = case["published"]
+    found = [under_all("moment", beam, place) for place in names[1 : 1 + len(hogging)]]
+    pushes = [under_all("reaction", beam, place) for place in names[: len(reactions)]]
+    found += pushes
+    for count in range(1, 1 + len(sagging)):
+        zero_shear = sum(pushes[:count], Fraction(0))
+        found.append(under_all("moment", continuous(spans, (zero_shear,)), "1"))
+    for ours, published in zip(found, hogging + reactions + sagging, strict=True):
+        assert abs(ours - exact(published)) <= exact(case["tolerance"]), named(case)
 
 
 @pytest.mark.parametrize("name", TABLES)
@@ -307,7 +376,7 @@ def test_no_case_is_left_out() -> None:
         "det-overhang-moving-udl",
         "irc-70R-tracked-49m",
     }
-    covered = {name for name, case in CASES.items() if case["item"] in (1, 3)}
-    assert {*LINES, *TABLES, *single} == covered
+    covered = {name for name, case in CASES.items() if case["item"] in (1, 2, 3)}
+    assert {*LINES, *PLACED, *COEFFICIENTS, *TABLES, *single} == covered
     assert Counter(case["item"] for case in CASES.values()) == COUNTED
     assert all(CASES[name]["agrees"] for name in covered)

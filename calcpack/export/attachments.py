@@ -22,16 +22,21 @@ class Attachment:
     description: str
 
 
-def attachments(calc: bytes, found: Json, notebook: dict[str, Any]) -> tuple[Attachment, ...]:
-    """calc.toml as read, results.json as ``solve --json`` prints it, the notebook, a manifest.
+def attachments(
+    calc: bytes, tables: Sequence[tuple[str, bytes]], found: Json, notebook: dict[str, Any]
+) -> tuple[Attachment, ...]:
+    """calc.toml and its tables as read, results.json as ``solve --json`` prints it, the notebook,
+    a manifest.
 
     Args:
         calc: the bytes of calc.toml.
+        tables: name and bytes of every table that it names.
         found: the results.
         notebook: the notebook as plain data; its outputs are left out.
     """
     files = (
         Attachment("calc.toml", calc, "application/toml", "source", "The input"),
+        *(Attachment(name, table, "text/csv", "source", "A table") for name, table in tables),
         Attachment("results.json", as_bytes(found), "application/json", "data", "What was found"),
         Attachment(
             "calculation.ipynb",

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from datetime import date
 from pathlib import Path
 
@@ -19,8 +20,12 @@ from calcpack.results import results
 from calcpack.sheets.pages import make_sheet
 from calcpack.solution import solve
 
+Report = Callable[[str], None]
+"""Is told in a word what is being done next."""
+PHASES = 4
 
-def issue(notebook: NotebookNode, folder: Path) -> bytes:
+
+def issue(notebook: NotebookNode, folder: Path, report: Report = lambda phase: None) -> bytes:
     """The package of the calculation in ``folder`` as PDF, in the order of ``notebook``.
 
     Sheets are made from calc.toml anew, never from what the notebook shows. A kernel is started
@@ -32,8 +37,10 @@ def issue(notebook: NotebookNode, folder: Path) -> bytes:
         Disagreement: a second method differs.
         OutputFailed: a cell of the engineer's own or the typesetter failed.
     """
+    report("reading")
     parts, problems = parts_of(notebook)
     calc, calculation, day = _read(folder, problems)
+    report("solving")
     solution = solve(calculation)
     found = results(solution)
     _refuse(forged_outputs(notebook, parts, found["digest"]))
@@ -43,13 +50,16 @@ def issue(notebook: NotebookNode, folder: Path) -> bytes:
 
         shown = executed(notebook, folder)
         _refuse(forged_outputs(shown, parts, found["digest"]))
+    report("drawing")
     made = [
         make_sheet(part.name, solution)
         if isinstance(part, SheetCall)
         else own_blocks(shown.cells[part.index], part.index)
         for part in parts
     ]
-    return to_pdf(made, solution, found["digest"], day, attachments(calc, found, notebook))
+    report("typesetting")
+    inside = attachments(calc, calculation.tables, found, notebook)
+    return to_pdf(made, solution, found["digest"], day, inside)
 
 
 def _read(folder: Path, problems: list[Problem]) -> tuple[bytes, Calculation, date]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import itertools
+from bisect import bisect_left
 from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
@@ -15,6 +16,8 @@ from calcpack.exact.piecewise import GRID, Piecewise
 from calcpack.model.loads import Heading, MovingLoad
 
 Floats = NDArray[np.float64]
+NARROW = 1e-9
+"""An interval is narrow where it is less than this part of the stations' size."""
 
 
 @dataclass(frozen=True)
@@ -68,7 +71,7 @@ def _along(
     stops = sorted(events)
     starts = np.array([float(stop) for stop in stops[:-1]])
     widths = np.array([float(b - a) for a, b in itertools.pairwise(stops)])
-    polynomials = _polynomials(line, load, sense, sign, starts, widths)
+    polynomials = _polynomials(line, load, sense, sign, stops)
     first = polynomials[:, 0]
     last = _at(polynomials, widths)
     best = np.zeros(len(stops))
@@ -94,19 +97,30 @@ def _polynomials(
     load: MovingLoad,
     sense: Literal[1, -1],
     sign: int,
-    starts: Floats,
-    widths: Floats,
+    stops: Sequence[Fraction],
 ) -> Floats:
-    """Per interval between events the effect as a cubic in travel from the interval's start."""
+    """Per interval between events the effect as a cubic in travel from the interval's start.
+
+    Which piece an axle stands on is told by the middle of the interval; where the interval is too
+    narrow for floats to tell, by exact comparison.
+    """
     breaks = np.array([float(stop) for stop in line.breaks])
     pieces = np.zeros((len(line.pieces), 4))
     for row, piece in zip(pieces, line.pieces, strict=True):
         row[: len(piece)] = [sense * float(value) for value in piece]
     weights = np.array([float(axle.weight) for axle in load.axles])
     offsets = sign * np.array([float(offset) for offset in load.offsets])
+    starts = np.array([float(stop) for stop in stops[:-1]])
+    widths = np.array([float(b - a) for a, b in itertools.pairwise(stops)])
     middles = (starts + widths / 2)[:, None] - offsets
-    index = np.clip(np.searchsorted(breaks, middles) - 1, 0, len(pieces) - 1)
-    counts = weights * ((middles > breaks[0]) & (middles < breaks[-1]))
+    index = np.searchsorted(breaks, middles) - 1
+    reach = NARROW * (1 + np.abs(middles).max(axis=1))
+    for row in np.flatnonzero(widths < reach):
+        middle = (stops[row] + stops[row + 1]) / 2
+        exact = (middle - sign * offset for offset in load.offsets)
+        index[row] = [bisect_left(line.breaks, at) - 1 for at in exact]
+    counts = weights * ((index >= 0) & (index < len(pieces)))
+    index = np.clip(index, 0, len(pieces) - 1)
     a0, a1, a2, a3 = np.moveaxis(pieces[index], -1, 0)
     if load.relieving == "neglect":
         t = middles - breaks[index]

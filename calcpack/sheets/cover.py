@@ -20,9 +20,9 @@ COVERS = (
     "equation is printed with its numbers."
 )
 NOT_COVERED = (
-    "Not covered: permanent loads but settlements, combinations and resistances; section capacity, skew, curvature "
-    "and grillage action, frames, trusses, arches and cables, lift-off, shear deformation, "
-    "braking, centrifugal and seismic forces, semi-rigid releases."
+    "Not covered: permanent loads but settlements, combinations and resistances; section capacity, "
+    "skew, curvature and grillage action, frames, trusses, arches and cables, lift-off, shear "
+    "deformation, braking, centrifugal and seismic forces, semi-rigid releases."
 )
 CAUTION = (
     "A number on these sheets may be wrong, by its input or by a fault of the program. The "

@@ -31,7 +31,7 @@ LOAD = make_load((12, 0), (6, 3), uniform="0.5", allowance="0.2", distribution="
 
 
 def test_what_agrees() -> None:
-    second = compare_lines(BEAM, LINES)
+    second = compare_lines(BEAM, "SI", LINES)
     found = [(one.effect, one.method, one.within) for one in second.agreements]
     assert found == [
         (effect, method, within)
@@ -49,7 +49,7 @@ def bent(line: Piecewise, by: Fraction) -> Piecewise:
 def test_the_kinematic_statement_finds_the_least_difference(effect: Effect) -> None:
     wrong = {**LINES, effect: bent(LINES[effect], Fraction(1, 10**30))}
     with pytest.raises(Disagreement, match=f"{effect.label}: the kinematic"):
-        compare_lines(BEAM, wrong)
+        compare_lines(BEAM, "SI", wrong)
 
 
 @pytest.mark.parametrize("effect", EFFECTS, ids=lambda effect: effect.kind)
@@ -65,7 +65,7 @@ def test_the_stiffness_solution_finds_a_small_difference(
 
     monkeypatch.setattr(checks, "influence_line", erring)
     with pytest.raises(Disagreement, match=f"{effect.label}: the stiffness solution differs by 1"):
-        compare_lines(BEAM, wrong)
+        compare_lines(BEAM, "SI", wrong)
 
 
 @pytest.mark.parametrize("effect", EFFECTS, ids=lambda effect: effect.kind)
@@ -73,7 +73,7 @@ def test_the_stiffness_solution_finds_a_small_difference(
 def test_the_sweep_finds_a_value_that_is_too_low_or_too_high(
     effect: Effect, sense: Literal[1, -1]
 ) -> None:
-    second = compare_lines(BEAM, LINES)
+    second = compare_lines(BEAM, "SI", LINES)
     found = governing(LINES[effect], LOAD, sense)
     value = swept_value(second, effect, LOAD, found)
     assert value == pytest.approx(float(found.value), rel=1e-2)

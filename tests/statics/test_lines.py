@@ -149,7 +149,7 @@ def test_a_support_holds_the_left_face_of_a_hinge() -> None:
     (hinge,) = (one for one in lines if one.kind == "shear")
     assert lines[hinge] == broken((0, 0), (4, 0), (4, 1), (10, 0))
     assert hinge.face == "right"
-    compare_lines(beam, lines)
+    compare_lines(beam, "US", lines)
 
 
 def test_a_support_holds_the_right_face_of_a_slide() -> None:

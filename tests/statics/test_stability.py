@@ -148,9 +148,7 @@ def test_degree(name: str) -> None:
     found = classified(beam)
     assert (found.kind, found.degree) == ("indeterminate", degree)
     assert f": {degree} unknown{'s' * (degree > 1)} more than equations" in found.reason
-    with pytest.raises(InputRefused, match="not computed by this release") as refused:
-        solve(make_calculation(beam, []))
-    assert f"indeterminate to degree {degree}" in str(refused.value)
+    assert len(solve(make_calculation(beam, [])).system.redundants) == degree
 
 
 def test_determinate_in_words() -> None:
