@@ -93,9 +93,14 @@ REFUSED: list[tuple[str, Change, list[str]]] = [
         ["beam: unstable"],
     ),
     (
-        "indeterminate",
-        swap('"pin"', '"fixed"'),
-        ["beam: indeterminate to degree 1"],
+        "deflection without stiffness",
+        lambda text: text + '\n[[effects]]\nkind = "deflection"\nat = "1"\n',
+        ["effects[0].kind: deflection"],
+    ),
+    (
+        "redundants that do not suit",
+        lambda text: swap("releases = []", 'releases = []\nredundants = ["reaction B"]')(text),
+        ["beam.redundants: reaction at B"],
     ),
 ]
 

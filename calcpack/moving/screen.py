@@ -69,7 +69,6 @@ def _along(
                 share = max(load.axles[axle].weight * ends[mark], Fraction(0))
                 at_ends[lead_at] = at_ends.get(lead_at, 0.0) + float(share)
     stops = sorted(events)
-    starts = np.array([float(stop) for stop in stops[:-1]])
     widths = np.array([float(b - a) for a, b in itertools.pairwise(stops)])
     polynomials = _polynomials(line, load, sense, sign, stops)
     first = polynomials[:, 0]
@@ -115,10 +114,10 @@ def _polynomials(
     middles = (starts + widths / 2)[:, None] - offsets
     index = np.searchsorted(breaks, middles) - 1
     reach = NARROW * (1 + np.abs(middles).max(axis=1))
-    for row in np.flatnonzero(widths < reach):
-        middle = (stops[row] + stops[row + 1]) / 2
+    for narrow in np.flatnonzero(widths < reach).tolist():
+        middle = (stops[narrow] + stops[narrow + 1]) / 2
         exact = (middle - sign * offset for offset in load.offsets)
-        index[row] = [bisect_left(line.breaks, at) - 1 for at in exact]
+        index[narrow] = [bisect_left(line.breaks, at) - 1 for at in exact]
     counts = weights * ((index >= 0) & (index < len(pieces)))
     index = np.clip(index, 0, len(pieces) - 1)
     a0, a1, a2, a3 = np.moveaxis(pieces[index], -1, 0)

@@ -30,8 +30,9 @@ def swept(
     Returns:
         The value found (its sign is that of ``sense``; 0 where the load had better stay away) and
         by how much, at most, it falls short of the true extreme. The second is the greatest sum
-        over one step of what each axle could find for itself inside that step, less what was found.
-        Both hold to within the rounding of double numbers.
+        over one step of what each axle could find for itself inside that step, less what was found:
+        the height at the step's ends and at breakpoints between, and what a curved line may rise
+        above its chord. Both hold to within the rounding of double numbers.
 
     An axle at an end of the beam counts, one off the beam does not. The allowance raises the axles
     only; the uniform load stands on whatever parts raise the effect; distribution takes its part

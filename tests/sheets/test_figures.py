@@ -230,10 +230,14 @@ def test_the_unit_of_an_area_is_the_ordinates_times_length(unit: str, area: str)
     assert area in texts(line_figure(GIRDER, MOMENT, "M at 1", unit, 3, "SI"))
 
 
-def test_a_curved_line_is_refused() -> None:
-    curved = Piecewise.from_pieces([(0, 128, (0, 0, 1))])
-    with pytest.raises(ValueError, match="straight pieces only"):
-        line_figure(GIRDER, curved, "M", "ft", 3, "US")
+def test_a_curved_line_is_drawn_curved_and_marked_where_it_turns() -> None:
+    """x (128 - x) / 128 turns at 64 with the value 32 and has the area 128² / 6 (calculus)."""
+    curved = Piecewise.from_pieces([(0, 128, (0, 1, Fraction(-1, 128)))])
+    drawing = line_figure(GIRDER, curved, "M", "ft", 3, "US")
+    assert {"+32.000", "+2730.7 ft²"} <= {*texts(drawing)}
+    assert overlaps(drawing) == []
+    longest = max(len(one.path) for one in drawing.items if isinstance(one, Line))
+    assert longest > 20
 
 
 def test_a_line_of_zeros_is_an_axis() -> None:
