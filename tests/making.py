@@ -10,7 +10,7 @@ from fractions import Fraction
 
 from beams import Place
 
-from calcpack.elastic.compatibility import force_method
+from calcpack.elastic.compatibility import deflection_line, force_method
 from calcpack.elastic.redundants import redundants_by_rule
 from calcpack.elastic.released import release
 from calcpack.exact.piecewise import Piecewise
@@ -135,14 +135,23 @@ def make_effect(beam: Beam, kind: EffectKind, at: str, face: Face | None = None)
     return Effect(kind, at, beam.station(at).at, face)
 
 
-def lines_of(beam: Beam, effects: Sequence[Effect]) -> list[Piecewise]:
+def lines_of(
+    beam: Beam, effects: Sequence[Effect], redundants: Sequence[Effect] | None = None
+) -> list[Piecewise]:
     """The influence line of each effect, by statics and where needed by the force method."""
     degree = classify(beam, cut_into_bodies(beam)).degree
-    system = cut_into_bodies(beam, redundants_by_rule(beam, degree))
+    chosen = redundants_by_rule(beam, degree) if redundants is None else redundants
+    system = cut_into_bodies(beam, chosen)
     plan = plan_of_solution(beam, system)
-    method = force_method(release(beam, system, plan, [])) if degree else None
-    unknowns = unknown_lines(beam, plan, method.lines if method else None)
-    return [effect_line(beam, system, unknowns, effect)[0] for effect in effects]
+    moved = [one.station for one in effects if one.kind in ("deflection", "rotation")]
+    method = force_method(release(beam, system, plan, moved))
+    unknowns = unknown_lines(beam, plan, method.lines)
+    return [
+        deflection_line(method, effect)
+        if effect.kind in ("deflection", "rotation")
+        else effect_line(beam, system, unknowns, effect)[0]
+        for effect in effects
+    ]
 
 
 def line_of(beam: Beam, kind: EffectKind, at: str, face: Face | None = None) -> Piecewise:

@@ -6,23 +6,31 @@ import itertools
 from bisect import bisect
 from collections.abc import Sequence
 from fractions import Fraction
-from math import gcd, lcm
+from math import gcd
 from typing import Literal, NamedTuple
 
 from calcpack.errors import ProgramFault
 from calcpack.exact.linear import Row, solve
-from calcpack.exact.piecewise import Coefficients, Piecewise
+from calcpack.exact.piecewise import Piecewise
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect, EffectKind
 from calcpack.second.bending import stiffness_after
 from calcpack.second.faces import face_or_inner
-
-State = tuple[Fraction, ...]
-"""Of a shape at a place: height (upward +), slope, and the couple (as the slope +) and the force
-(as the height +) of everything that acts on the beam left of it. EI times the slope's rate is
-minus the couple; the couple's rate is minus the force."""
-
-HEIGHT, SLOPE, COUPLE, FORCE = range(4)
+from calcpack.second.shapes import (
+    COUPLE,
+    FORCE,
+    HEIGHT,
+    SLOPE,
+    UNITS,
+    Pair,
+    Stretch,
+    Weights,
+    added,
+    carried,
+    cubics,
+    weighed,
+    whole_numbers,
+)
 
 PARTNER = (FORCE, COUPLE, SLOPE, HEIGHT)
 """What a joint holds where another part of the state may jump: where the height jumps, as at a
@@ -39,12 +47,7 @@ JUMPS: dict[EffectKind, tuple[int, int]] = {
 LEFT_CUT, RELEASE_FIRST, SUPPORT, RELEASE_LAST, STEP, RIGHT_CUT = range(6)
 """The order at one station; a release comes first where the support holds its right face."""
 
-UNITS: tuple[State, ...] = tuple(
-    tuple(Fraction(part == other) for other in range(4)) for part in range(4)
-)
 Place = tuple[Fraction, int]
-Pair = tuple[State, State]
-Weights = tuple[int, int]
 
 
 class _Joint(NamedTuple):
@@ -59,37 +62,17 @@ class _Joint(NamedTuple):
     restraint: EffectKind | None = None
 
 
-class _Stretch(NamedTuple):
-    """The beam between neighbouring joints; of no length where they share a station."""
-
-    start: Fraction
-    end: Fraction
-    flexibility: Fraction
-
-    @property
-    def length(self) -> Fraction:
-        return self.end - self.start
-
-
 class _Family(NamedTuple):
-    """Per stretch, two shapes whose sums are all that meet every condition beyond its one end.
+    """Per stretch, two shapes whose sums are all that meet every condition beyond one end of it.
 
     Attributes:
         pairs: the states of the two at that end.
-        ratios: per joint; a of the first and b of the second continue beyond it as b times these
-            of the two there, or as a and b where there are none.
+        ratios: per joint; a of the first and b of the second go on beyond it as b times these of
+            the two there, or as a and b where there are none.
     """
 
     pairs: list[Pair]
     ratios: list[Weights | None]
-
-
-class _Cubics(NamedTuple):
-    """Two shapes on one stretch: whole coefficients, lowest power first, over a ``bottom``."""
-
-    one: list[int]
-    two: list[int]
-    bottom: int
 
 
 def influence_line(beam: Beam, effects: Sequence[Effect]) -> tuple[Piecewise, ...]:
@@ -131,51 +114,51 @@ def influence_line(beam: Beam, effects: Sequence[Effect]) -> tuple[Piecewise, ..
 
 
 class _Shapes:
-    """The beam's shapes between joints, from both of its ends."""
+    """The beam between its joints, and its shapes from both ends."""
 
     def __init__(self, beam: Beam) -> None:
         self.joints = _joints(beam)
         self.places = [joint.place for joint in self.joints]
         stops = [Fraction(0), *(at for at, _ in self.places), beam.length]
         self.stretches = [
-            _Stretch(start, end, 1 / stiffness_after(beam, start))
+            Stretch(start, end, 1 / stiffness_after(beam, start))
             for start, end in itertools.pairwise(stops)
         ]
         self.left = _family(self.stretches, self.joints, 1)
         pairs, ratios = _family(self.stretches[::-1], self.joints[::-1], -1)
         self.right = _Family(pairs[::-1], ratios[::-1])
-        self.on_left = list(map(_cubics, self.left.pairs, self.stretches))
-        starts = (
-            _carried(pair, one, -one.length)
+        self.from_left = list(map(cubics, self.left.pairs, self.stretches))
+        self.from_right = [
+            cubics(carried(pair, one, -one.length), one)
             for pair, one in zip(self.right.pairs, self.stretches, strict=True)
-        )
-        self.on_right = list(map(_cubics, starts, self.stretches))
+        ]
 
     def line(self, effect: Effect) -> Piecewise:
         """The shape for a unit displacement, force or couple at an effect."""
-        at, lifted = effect.station, None
+        at, moved = effect.station, None
         if effect.kind in JUMPS:
             before = after = bisect(self.places, _cut(effect))
         else:
             restraints = [(joint.restraint, joint.place[0]) for joint in self.joints]
             before = restraints.index((effect.kind, at))
-            lifted, after = self.joints[before], before + 1
+            moved, after = self.joints[before], before + 1
         first, last = self.stretches[before], self.stretches[after]
-        left = _carried(self.left.pairs[before], first, at - first.start)
-        right = _carried(self.right.pairs[after], last, at - last.end)
-        (a, b, c, d), bottom = _whole(_met(effect, left, right, lifted))
-        back = itertools.accumulate(self.left.ratios[:before][::-1], _beyond, initial=(a, b))
-        on = itertools.accumulate(self.right.ratios[after:], _beyond, initial=(c, d))
-        cubics = [_cubics(right, last), *self.on_right[after + 1 :]]
+        left = carried(self.left.pairs[before], first, at - first.start)
+        right = carried(self.right.pairs[after], last, at - last.end)
+        (a, b, c, d), bottom = whole_numbers(_met(effect, left, right, moved))
+        ratios = self.left.ratios[:before][::-1], self.right.ratios[after:]
+        on_left = [*itertools.accumulate(ratios[0], _beyond, initial=(a, b))][::-1]
+        on_right = itertools.accumulate(ratios[1], _beyond, initial=(c, d))
+        shapes_right = [cubics(right, last), *self.from_right[after + 1 :]]
         parts = [
-            (one.start, min(one.end, at), _cubic(shapes, weights, bottom))
-            for one, shapes, weights in zip(
-                self.stretches, self.on_left, list(back)[::-1], strict=False
-            )
+            (one.start, min(one.end, at), weighed(shapes, weights, bottom))
+            for one, shapes, weights in zip(self.stretches, self.from_left, on_left, strict=False)
         ]
         parts += [
-            (max(one.start, at), one.end, _cubic(shapes, weights, bottom))
-            for one, shapes, weights in zip(self.stretches[after:], cubics, on, strict=True)
+            (max(one.start, at), one.end, weighed(shapes, weights, bottom))
+            for one, shapes, weights in zip(
+                self.stretches[after:], shapes_right, on_right, strict=True
+            )
         ]
         return Piecewise.from_pieces(parts)
 
@@ -198,7 +181,7 @@ def _joints(beam: Beam) -> list[_Joint]:
 
 
 def _gives(stiffness: Fraction) -> Fraction:
-    """What a support gives under a unit force: nothing where it has no spring."""
+    """What a support gives under a unit force: nothing where it is no spring."""
     return 1 / stiffness if stiffness else Fraction(0)
 
 
@@ -208,92 +191,48 @@ def _cut(effect: Effect) -> Place:
 
 
 def _family(
-    stretches: Sequence[_Stretch], joints: Sequence[_Joint], onward: Literal[1, -1]
+    stretches: Sequence[Stretch], joints: Sequence[_Joint], onward: Literal[1, -1]
 ) -> _Family:
     """Walk from a free end of the beam, rightward or leftward, past every joint."""
     pair = UNITS[HEIGHT], UNITS[SLOPE]
     pairs, ratios = [pair], []
     for stretch, joint in zip(stretches, joints, strict=False):
-        pair, ratio = _past(joint, _carried(pair, stretch, onward * stretch.length), onward)
+        pair, ratio = _past(joint, carried(pair, stretch, onward * stretch.length), onward)
         pairs.append(pair)
         ratios.append(ratio)
     return _Family(pairs, ratios)
 
 
 def _past(joint: _Joint, pair: Pair, onward: int) -> tuple[Pair, Weights | None]:
-    """The pair past a joint: the jump is as large as the partner lets it be."""
+    """The pair past a joint: the jump is what the partner asks for, or free if that is zero."""
     if joint.jump is None:
         return pair, None
     jump, (one, two) = UNITS[joint.jump], pair
     first, second = (state[PARTNER[joint.jump]] for state in pair)
     if joint.gives:
         share = -onward / joint.gives
-        return (_sum(1, one, share * first, jump), _sum(1, two, share * second, jump)), None
-    (a, b), _ = _whole((second, -first))
-    divisor = gcd(a, b)  # 0 where the jump by itself meets every condition
-    ratio = a // divisor, b // divisor
-    return (jump, _sum(ratio[0], one, ratio[1], two)), ratio
+        return (added(1, one, share * first, jump), added(1, two, share * second, jump)), None
+    (a, b), _ = whole_numbers((second, -first))
+    divisor = gcd(a, b)  # 0 where the jump alone meets every condition: the beam is not stable
+    a, b = a // divisor, b // divisor
+    return (jump, added(a, one, b, two)), (a, b)
 
 
 def _beyond(weights: Weights, ratio: Weights | None) -> Weights:
     return weights if ratio is None else (weights[1] * ratio[0], weights[1] * ratio[1])
 
 
-def _met(effect: Effect, left: Pair, right: Pair, lifted: _Joint | None) -> list[Fraction]:
-    """How much of both left and both right shapes meets where the effect is."""
-    states = [*(_sum(-1, state, 0, state) for state in left), *right]
-    rows: list[Row] = [dict(enumerate(parts)) for parts in zip(*states, strict=True)]
-    if lifted is None:
+def _met(effect: Effect, left: Pair, right: Pair, moved: _Joint | None) -> list[Fraction]:
+    """How much there is of the two left shapes and of the two right ones."""
+    rows: list[Row] = [
+        {0: -left[0][part], 1: -left[1][part], 2: right[0][part], 3: right[1][part]}
+        for part in range(4)
+    ]
+    if moved is None or moved.jump is None:
         part, value = JUMPS[effect.kind]
         return solve(rows, 4, [{part: Fraction(value)}])[0]
-    assert lifted.jump is not None
-    row = {column: lifted.gives * value for column, value in rows[lifted.jump].items()}
+    row = {column: moved.gives * value for column, value in rows[moved.jump].items()}
     for column, state in enumerate(left):
-        row[column] += state[PARTNER[lifted.jump]]
-    rows[lifted.jump] = row
-    return solve(rows, 4, [{lifted.jump: Fraction(1)}])[0]
-
-
-def _bent(state: State, flexibility: Fraction) -> Coefficients:
-    """The shape from a state rightward: a cubic, for nothing acts on the stretch."""
-    height, slope, couple, force = state
-    return height, slope, -couple * flexibility / 2, force * flexibility / 6
-
-
-def _carried(pair: Pair, stretch: _Stretch, by: Fraction) -> Pair:
-    """The states of the pair further right by a length, or further left where it is negative."""
-
-    def carried(state: State) -> State:
-        height, slope, half, sixth = _bent(state, stretch.flexibility)
-        return (
-            height + by * (slope + by * (half + by * sixth)),
-            slope + by * (2 * half + by * 3 * sixth),
-            state[COUPLE] - by * state[FORCE],
-            state[FORCE],
-        )
-
-    return carried(pair[0]), carried(pair[1])
-
-
-def _cubics(pair: Pair, stretch: _Stretch) -> _Cubics:
-    one, two = (_bent(state, stretch.flexibility) for state in pair)
-    whole, bottom = _whole((*one, *two))
-    return _Cubics(whole[:4], whole[4:], bottom)
-
-
-def _cubic(shapes: _Cubics, weights: Weights, bottom: int) -> Coefficients:
-    """The sum of both shapes; one division for each coefficient keeps long fractions cheap."""
-    (a, b), whole = weights, bottom * shapes.bottom
-    return tuple(
-        Fraction(a * x + b * y, whole) for x, y in zip(shapes.one, shapes.two, strict=True)
-    )
-
-
-def _sum(a: Fraction | int, one: State, b: Fraction | int, two: State) -> State:
-    return tuple(a * x + b * y for x, y in zip(one, two, strict=True))
-
-
-def _whole(values: Sequence[Fraction]) -> tuple[list[int], int]:
-    """Numerators over the least common denominator."""
-    bottom = lcm(*(value.denominator for value in values))
-    return [value.numerator * (bottom // value.denominator) for value in values], bottom
+        row[column] += state[PARTNER[moved.jump]]
+    rows[moved.jump] = row
+    return solve(rows, 4, [{moved.jump: Fraction(1)}])[0]

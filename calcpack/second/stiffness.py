@@ -39,25 +39,28 @@ class Ordinates:
     left_slopes: Floats
     right_slopes: Floats
 
-    @property
-    def hulls(self) -> Floats:
-        """The cubic on each stretch by its four Bézier ordinates, (n - 1) x 4.
-
-        Source: at thirds of the stretch, the inner two on the tangents at its ends.
-
-        >>> line, slope = np.array([0.0, 6.0]), np.ones(2)
-        >>> Ordinates(line, line, line, slope, slope).hulls.tolist()
-        [[0.0, 2.0, 4.0, 6.0]]
-        """
-        third = np.diff(self.stations) / 3
-        start, end = self.right[:-1], self.left[1:]
-        rise, drop = third * self.right_slopes[:-1], third * self.left_slopes[1:]
-        return np.column_stack([start, start + rise, end - drop, end])
-
     def __mul__(self, factor: float) -> Ordinates:
         """The same in another unit of the effect."""
         values = (self.left, self.right, self.left_slopes, self.right_slopes)
         return Ordinates(self.stations, *(factor * value for value in values))
+
+    @property
+    def cubics(self) -> tuple[Floats, Floats, Floats]:
+        """The start and the width of each stretch (m), and its cubic by the four Bézier ordinates
+        (m x 4): at thirds of the stretch, the inner two on the tangents at its ends.
+
+        Stretches too short for doubles are left out.
+
+        >>> line, slope = np.array([0.0, 6.0]), np.ones(2)
+        >>> [one.tolist() for one in Ordinates(line, line, line, slope, slope).cubics]
+        [[0.0], [6.0], [[0.0, 2.0, 4.0, 6.0]]]
+        """
+        widths = np.diff(self.stations)
+        start, end = self.right[:-1], self.left[1:]
+        rise, drop = widths / 3 * self.right_slopes[:-1], widths / 3 * self.left_slopes[1:]
+        ordinates = np.column_stack([start, start + rise, end - drop, end])
+        wide = widths > 0
+        return self.stations[:-1][wide], widths[wide], ordinates[wide]
 
     def values(self, places: Floats) -> Floats:
         """The line anywhere, at a station its value just right of it (at the right end the inner
@@ -67,11 +70,10 @@ class Ordinates:
         >>> Ordinates(line, line, line, slope, slope).values(np.array([1.5, 6.0, 7.0])).tolist()
         [1.5, 6.0, 0.0]
         """
-        index = np.searchsorted(self.stations, places, side="right") - 1
-        index = np.clip(index, 0, len(self.stations) - 2)
-        start, end = self.stations[index], self.stations[index + 1]
-        t = (places - start) / (end - start)
-        a, b, c, d = self.hulls.T
+        starts, widths, ordinates = self.cubics
+        index = np.clip(np.searchsorted(starts, places, side="right") - 1, 0, None)
+        t = (places - starts[index]) / widths[index]
+        a, b, c, d = ordinates.T
         powers = np.array([a, 3 * (b - a), 3 * (a - 2 * b + c), d - a + 3 * (b - c)])
         zeroth, first, second, third = powers[:, index]
         cubic = zeroth + t * (first + t * (second + t * third))

@@ -38,17 +38,17 @@ def swept(
     only; the uniform load stands on whatever parts raise the effect; distribution takes its part
     of both.
     """
-    hulls, widths = sense * ordinates.hulls, np.diff(ordinates.stations)
     found = possible = 0.0
     for heading in load.headings:
         behind = -1 if heading == "right" else 1
         reached, bound = _best(ordinates, load, sense, behind, steps)
         found, possible = max(found, reached), max(possible, bound)
     axles = (1 + float(load.allowance)) * float(load.distribution)
-    value = axles * found
-    if load.uniform:
-        value += float(load.uniform) * float(load.distribution) * _positive_area(widths, hulls)
-    return sense * value, axles * (possible - found)
+    uniform = float(load.uniform) * float(load.distribution)
+    if uniform:
+        _, widths, cubics = ordinates.cubics
+        uniform *= _positive_area(widths, sense * cubics)
+    return sense * (axles * found + uniform), axles * (possible - found)
 
 
 def _best(
@@ -74,23 +74,24 @@ def _best(
     for rounding in (-1e-6, 1e-6):
         cell = np.floor(cells + rounding).astype(int)
         np.maximum.at(highest, (cell, np.arange(len(offsets))), line[:, None])
-    highest += _bulge(np.diff(ordinates.stations), sense * ordinates.hulls, step)
+    _, widths, cubics = ordinates.cubics
+    highest += _bulge(widths, sense * cubics, step)
     if load.relieving == "neglect":
         heights, highest = np.maximum(heights, 0.0), np.maximum(highest, 0.0)
     return float(max((heights @ weights).max(), 0.0)), float(max((highest @ weights).max(), 0.0))
 
 
-def _bulge(widths: Floats, hulls: Floats, step: float) -> float:
+def _bulge(widths: Floats, cubics: Floats, step: float) -> float:
     """The most by which cubics rise above their chords inside a step: step² max(-f'') / 8.
 
     The second derivative is straight; at the ends of a stretch it is six times the second
     difference of the Bézier ordinates over the width squared.
     """
-    bends = -np.diff(hulls, 2).min(axis=1, initial=0.0)
+    bends = -np.diff(cubics, 2).min(axis=1, initial=0.0)
     return float((0.75 * bends * np.minimum(step / widths, 1.0) ** 2).max())
 
 
-def _positive_area(widths: Floats, hulls: Floats) -> float:
+def _positive_area(widths: Floats, cubics: Floats) -> float:
     """The area between the axis and the parts of the line above it.
 
     A cubic lies between its Bézier ordinates, and its mean is theirs. Where they lie on both sides
@@ -98,17 +99,17 @@ def _positive_area(widths: Floats, hulls: Floats) -> float:
     """
     area = 0.0
     for _ in range(HALVINGS):
-        above, below = (hulls >= 0).all(axis=1), (hulls <= 0).all(axis=1)
-        area += float(widths[above] @ hulls[above].mean(axis=1))
+        above, below = (cubics >= 0).all(axis=1), (cubics <= 0).all(axis=1)
+        area += float(widths[above] @ cubics[above].mean(axis=1))
         crossing = ~(above | below)
         widths = np.repeat(widths[crossing] / 2, 2)
-        hulls = _halves(hulls[crossing])
+        cubics = _halves(cubics[crossing])
     return area
 
 
-def _halves(hulls: Floats) -> Floats:
+def _halves(cubics: Floats) -> Floats:
     """The Bézier ordinates of the left and the right half of each cubic."""
-    levels = [hulls]
+    levels = [cubics]
     while levels[-1].shape[1] > 1:
         levels.append((levels[-1][:, :-1] + levels[-1][:, 1:]) / 2)
     left = np.column_stack([level[:, 0] for level in levels])

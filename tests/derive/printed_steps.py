@@ -20,7 +20,8 @@ OPERATIONS: dict[type[ast.operator], Callable[[Fraction, Fraction], Any]] = {
 FRACTION = re.compile(r"\((-?\d+/\d+)\)")
 NEGATIVE = re.compile(r"\((-\d+\.\d+)\)")
 NUMBER = re.compile(r"\d+(?:\.\d+)?")
-CONSTANTS = {"0", "1", "2"}
+CONSTANTS = {"0", "1", "2", "3", "6", "12", "24"}
+"""Of areas, of integrals of products of straight lines, and of cubics; inches of a foot."""
 TENTHS = {str(tenths) for tenths in range(11)}
 
 
@@ -111,6 +112,9 @@ def check(steps: list[dict[str, Any]], inputs: Mapping[str, Fraction]) -> int:
             printed[path] = printed.get(path, same) & same
             assert printed[path], (step["key"], path)
         constants = CONSTANTS | (TENTHS if step["key"].startswith("station/") else set())
+        if "/zero=" in step["key"] or "/axle=" in step["key"]:
+            # A root of a cubic, or where the rate of change is zero: stated to its last digit.
+            constants = constants | {numbers.strip("()")}
         for literal in literals(numbers):
             origin = (
                 literal in used

@@ -7,9 +7,9 @@ from typing import Any
 
 import numpy as np
 import pytest
-import skfem
+import skfem  # type: ignore[import-untyped]
 from beams import make_beam
-from skfem.helpers import dd
+from skfem.helpers import dd  # type: ignore[import-untyped]
 
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect, EffectKind
@@ -28,8 +28,7 @@ BEAM = make_beam(
 )
 
 
-@skfem.BilinearForm
-def bending(u: Any, v: Any, w: Any) -> Any:
+def energy(u: Any, v: Any, w: Any) -> Any:
     return w.stiffness * dd(u)[0, 0] * dd(v)[0, 0]
 
 
@@ -45,7 +44,8 @@ class FiniteElements:
         within = np.searchsorted(starts, self.basis.global_coordinates()[0], side="right") - 1
         self.stiffness = stiffness[within]
         self.deflections, self.slopes = self.basis.nodal_dofs
-        self.matrix = bending.assemble(self.basis, stiffness=self.stiffness).tolil()
+        form = skfem.BilinearForm(energy)
+        self.matrix = form.assemble(self.basis, stiffness=self.stiffness).tolil()
         self.held: list[int] = []
         for station, *freedoms in zip(beam.stations, self.deflections, self.slopes, strict=True):
             support = station.support

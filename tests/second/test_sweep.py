@@ -26,7 +26,7 @@ from calcpack.model.loads import Axle, Heading, MovingLoad, Relieving
 from calcpack.model.request import Effect, EffectKind
 from calcpack.second.kinematic import influence_line
 from calcpack.second.stiffness import Ordinates, ordinates
-from calcpack.second.sweep import swept
+from calcpack.second.sweep import _bulge, swept
 
 SENSES: tuple[Literal[1, -1], ...] = (1, -1)
 SPAN = make_beam(10, [(0, "pin"), (10, "roller")], sections=[5])
@@ -108,6 +108,18 @@ def test_relieving_axles() -> None:
     assert neglected == pytest.approx(25, rel=5e-3)
 
 
+def test_stations_too_close_for_doubles() -> None:
+    """Sections a billionth from the ends of a beam of 10^12: its shear is 1 there."""
+    beam = make_beam(
+        10**12, [(0, "pin"), (10**12, "roller")], sections=["1e-9", 10**12 - Fraction(1, 10**9)]
+    )
+    load = train((7, 0), uniform=2)
+    for name, sense in zip("12", SENSES, strict=True):
+        found, short = swept(line_of(beam, "shear", name), load, sense)
+        assert found == pytest.approx(sense * (7 + 10**12), rel=1e-3)
+        assert 0 <= short < 0.01
+
+
 def exact_extreme(line: Piecewise, load: MovingLoad, sense: int) -> Fraction:
     """The extreme in fractions, over every position at which an axle meets a breakpoint or an end:
     all axles on one side of their jumps, those at an end counted (there) or not (just beyond)."""
@@ -157,6 +169,11 @@ def test_shortfall_shrinks_with_the_step() -> None:
     assert shorts[2] < 1e-3 * swept(moment, load, 1)[0]
 
 
+def real_parts(polynomial: Polynomial) -> list[float]:
+    """Of all roots: those that are real are among them, and others do no harm."""
+    return [complex(root).real for root in polynomial.roots()]
+
+
 def extreme_of_curved(line: Piecewise, load: MovingLoad, sense: int) -> float:
     """The extreme where every axle counts: between neighbouring events the sum is one cubic, found
     through four of its points; it is highest at an end or where its derivative is zero. The area
@@ -178,12 +195,12 @@ def extreme_of_curved(line: Piecewise, load: MovingLoad, sense: int) -> float:
                 for lead in leads
             ]
             cubic = Polynomial.fit([1, 2, 3, 4], [sense * float(one) for one in sums], 3)
-            turns = [turn.real for turn in cubic.deriv().roots() if 0 < turn.real < 5]
+            turns = [turn for turn in real_parts(cubic.deriv()) if 0 < turn < 5]
             best = max(best, *(float(cubic(at)) for at in (0, 5, *turns)))
     for left, right, piece in zip(line.breaks, line.breaks[1:], line.pieces, strict=False):
         part = Polynomial([sense * float(one) for one in piece])
         width = float(right - left)
-        roots = [root.real for root in part.roots() if 0 < root.real < width]
+        roots = [root for root in real_parts(part) if 0 < root < width]
         areas = part.integ()(np.array(sorted([0.0, *roots, width])))
         area += float(np.maximum(np.diff(areas), 0).sum())
     factor = float((1 + load.allowance) * load.distribution)
@@ -197,7 +214,7 @@ def test_brackets_the_extreme_of_curved_lines(seed: int) -> None:
     effects = (*effects_of(beam)[::3], *movements_of(beam)[::4])
     loaded = 0
     for line, found in zip(influence_line(beam, effects), ordinates(beam, effects), strict=True):
-        size = float(np.abs(found.hulls).max())
+        size = float(np.abs(found.cubics[2]).max())
         for sense in SENSES:
             extreme = extreme_of_curved(line, load, sense)
             value, short = swept(found, load, sense, 500)
@@ -219,6 +236,14 @@ def test_one_axle_on_a_curved_line() -> None:
         found, short = swept(moment, train((60, 0)), -1, steps)
         assert -found <= greatest <= -found + short
         assert short < most
+
+
+def test_rise_above_a_chord() -> None:
+    """The parabola 4 t (1 - t) rises by 1 over its whole width, by a quarter over half of it."""
+    parabola = np.array([[0, 4 / 3, 4 / 3, 0]])
+    for step, rise in ((1, 0.25), (2, 1), (9, 1)):
+        assert _bulge(np.array([2.0]), parabola, step) == pytest.approx(rise)
+    assert _bulge(np.array([2.0]), -parabola, 1) == 0
 
 
 def test_area_under_a_curved_line() -> None:
