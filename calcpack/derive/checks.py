@@ -3,12 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from fractions import Fraction
 from typing import Literal
 
 from calcpack.errors import Disagreement
-from calcpack.exact.piecewise import Piecewise
+from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.exact.units import SYSTEMS, parse_unit
 from calcpack.model.beam import Beam
 from calcpack.model.loads import MovingLoad
@@ -18,6 +18,7 @@ from calcpack.second.kinematic import influence_line
 from calcpack.second.stiffness import Ordinates, ordinates
 from calcpack.second.sweep import swept
 
+SIDES: tuple[Side, ...] = ("left", "right")
 WITHIN = 1e-9
 """Bound on |difference| / (1 + largest ordinate) between the stiffness solution and ours."""
 
@@ -63,7 +64,7 @@ def compare_lines(beam: Beam, units: str, lines: Mapping[Effect, Piecewise]) -> 
     effects = tuple(lines)
     factors = {effect: conversion_of(units, effect) for effect in effects}
     by_stiffness = {
-        effect: _scaled(found, float(factors[effect]))
+        effect: found * float(factors[effect])
         for effect, found in zip(effects, ordinates(beam, effects), strict=True)
     }
     agreements = []
@@ -77,19 +78,20 @@ def compare_lines(beam: Beam, units: str, lines: Mapping[Effect, Piecewise]) -> 
     return SecondMethods(tuple(agreements), by_stiffness)
 
 
-def _scaled(found: Ordinates, factor: float) -> Ordinates:
-    return replace(found, left=found.left * factor, right=found.right * factor)
-
-
 def _compare_stiffness(beam: Beam, effect: Effect, line: Piecewise, found: Ordinates) -> None:
     stops = [station.at for station in beam.stations]
-    exact = [(float(line.left(at)), float(line.right(at))) for at in stops]
-    scale = max(abs(value) for pair in exact for value in pair)
+    scale = max(abs(float(line.value(at, side))) for at in stops for side in SIDES)
     scale += 1 if effect.kind not in ("deflection", "rotation") else 0
-    worst = max(
-        max(abs(left - one), abs(right - two))
-        for (left, right), one, two in zip(exact, found.left, found.right, strict=True)
-    )
+    worst = 0.0
+    for side, values, slopes in (
+        ("left", found.left, found.left_slopes),
+        ("right", found.right, found.right_slopes),
+    ):
+        for at, value, slope in zip(stops, values, slopes, strict=True):
+            face: Side = "left" if side == "left" else "right"
+            worst = max(worst, abs(float(line.value(at, face)) - value))
+            run = float(beam.length)
+            worst = max(worst, abs(float(line.slope(at, face)) - slope) * run)
     if not worst <= WITHIN * scale:
         raise Disagreement(
             f"{effect.label}: the stiffness solution differs by {worst:.1e}, "

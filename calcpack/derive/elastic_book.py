@@ -21,6 +21,7 @@ from calcpack.exact.formula import Formula, Leaf, Symbol, constant, total
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.request import Effect
 from calcpack.statics.equation import Equation
+from calcpack.statics.system import key_of
 
 Ends = tuple[Leaf | None, Leaf | None]
 """The moments at a segment's two ends as leaves; None where one is zero."""
@@ -143,7 +144,10 @@ class ElasticBook:
             if spring in one.forces and spring in other.forces:
                 assert self.reference is not None
                 formula = self.reference * one.forces[spring] * other.forces[spring]
-                part(spring.index, f"spring={spring.index}", formula / self._stiffness(spring))
+                stiffness = self._stiffness(spring)
+                assert stiffness.symbol is not None
+                name = f"spring={key_of(spring)}"
+                part(stiffness.symbol.index, name, formula / stiffness)
         steps.append(self.book.find(root, symbol, total(parts), kind, value, root))
         return steps
 

@@ -175,7 +175,7 @@ def release(
     stops.update(one.at for one in beam.stations if one.support or one.release)
     reference = beam.stiffness[0].EI if beam.stiffness else Fraction(1)
     segments = tuple(
-        Segment(start, end, reference / _stiffness(beam, start))
+        Segment(start, end, reference / beam.stiffness_after(start))
         for start, end in itertools.pairwise(sorted(stops))
     )
     nothing = Piecewise.from_pieces([(0, beam.length, (0,))])
@@ -205,7 +205,3 @@ def springs(beam: Beam) -> dict[Effect, Fraction]:
 def moment_at(beam: Beam, at: Fraction, face: Side) -> Effect:
     """The moment just beside a station."""
     return Effect("moment", place_name(beam, at), at, face)
-
-
-def _stiffness(beam: Beam, at: Fraction) -> Fraction:
-    return next((one.EI for one in beam.stiffness if one.start <= at < one.end), Fraction(1))

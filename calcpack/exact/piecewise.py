@@ -51,7 +51,7 @@ class Piecewise:
                 continue
             if end < start:
                 raise ValueError("a piece must run from left to right")
-            if pieces and coefficients == _shifted(pieces[-1], breaks[-1] - breaks[-2]):
+            if pieces and _continues(coefficients, pieces[-1], breaks[-1] - breaks[-2]):
                 breaks[-1] = Fraction(end)
             else:
                 pieces.append(coefficients)
@@ -96,7 +96,38 @@ class Piecewise:
         return min(max(position, 0), len(self.pieces) - 1)
 
     def __add__(self, other: Piecewise) -> Piecewise:
-        return _combined(self, other, _added)
+        return Piecewise.combined([(self, Fraction(1)), (other, Fraction(1))])
+
+    @staticmethod
+    def combined(parts: Sequence[tuple[Piecewise, Fraction]]) -> Piecewise:
+        """The sum of functions times factors, all over the same stretch.
+
+        >>> ramp = Piecewise.from_pieces([(0, 2, (0, 1))])
+        >>> Piecewise.combined([(ramp, Fraction(3)), (ramp, Fraction(-1))]).right(Fraction(1))
+        Fraction(2, 1)
+        """
+        first = parts[0][0]
+        if any(
+            (one.breaks[0], one.breaks[-1]) != (first.breaks[0], first.breaks[-1])
+            for one, _ in parts
+        ):
+            raise ValueError("all functions must cover the same stretch")
+        stops = sorted(set().union(*(one.breaks for one, _ in parts)))
+        at = [0] * len(parts)
+        pieces = []
+        for start, end in itertools.pairwise(stops):
+            total: list[Fraction] = []
+            for number, (one, factor) in enumerate(parts):
+                while one.breaks[at[number] + 1] <= start:
+                    at[number] += 1
+                piece = one.pieces[at[number]]
+                if factor and piece != _NOTHING:
+                    moved = _shifted(piece, start - one.breaks[at[number]])
+                    total += [Fraction(0)] * (len(moved) - len(total))
+                    for power, value in enumerate(moved):
+                        total[power] += factor * value
+            pieces.append((start, end, total))
+        return Piecewise.from_pieces(pieces)
 
     def __mul__(self, factor: Fraction | int) -> Piecewise:
         return self.mapped(lambda piece: tuple(factor * value for value in piece))
@@ -105,7 +136,7 @@ class Piecewise:
         return self * -1
 
     def __sub__(self, other: Piecewise) -> Piecewise:
-        return self + -other
+        return Piecewise.combined([(self, Fraction(1)), (other, Fraction(-1))])
 
     def __truediv__(self, divisor: Fraction | int) -> Piecewise:
         return self * (Fraction(1) / divisor)
@@ -177,6 +208,7 @@ class Piecewise:
         return positive, negative
 
 
+_NOTHING: Coefficients = (Fraction(0),)
 GRID = Fraction(1, 10**9)
 """Roots that are not rational are given to the nearest multiple of this."""
 
@@ -228,38 +260,19 @@ def _evaluated(piece: Sequence[Fraction], t: Fraction) -> Fraction:
     return total
 
 
+def _continues(piece: Coefficients, before: Coefficients, by: Fraction) -> bool:
+    """Whether a piece is the polynomial before it, seen ``by`` further right."""
+    if len(piece) != len(before) or piece[-1] != before[-1]:
+        return False
+    return piece == _shifted(before, by)
+
+
 def _shifted(piece: Coefficients, by: Fraction) -> Coefficients:
     """The same polynomial with its origin ``by`` further right (Horner's scheme)."""
+    if not by or len(piece) == 1:
+        return piece
     result = list(piece)
     for low in range(len(result) - 1):
         for power in range(len(result) - 2, low - 1, -1):
             result[power] += by * result[power + 1]
     return tuple(result)
-
-
-def _added(one: Coefficients, two: Coefficients) -> Coefficients:
-    size = max(len(one), len(two))
-    padding = (Fraction(0),) * size
-    return tuple(a + b for a, b in zip((one + padding)[:size], (two + padding)[:size], strict=True))
-
-
-def _combined(
-    one: Piecewise, two: Piecewise, change: Callable[[Coefficients, Coefficients], Coefficients]
-) -> Piecewise:
-    if (one.breaks[0], one.breaks[-1]) != (two.breaks[0], two.breaks[-1]):
-        raise ValueError("both functions must cover the same stretch")
-    stops = sorted({*one.breaks, *two.breaks})
-    parts = []
-    for start, end in itertools.pairwise(stops):
-        first, second = one._index(start, "right"), two._index(start, "right")
-        parts.append(
-            (
-                start,
-                end,
-                change(
-                    _shifted(one.pieces[first], start - one.breaks[first]),
-                    _shifted(two.pieces[second], start - two.breaks[second]),
-                ),
-            )
-        )
-    return Piecewise.from_pieces(parts)

@@ -202,6 +202,11 @@ class Beam:
     def _by_place(self) -> dict[Fraction, Station]:
         return {station.at: station for station in self.stations}
 
+    def stiffness_after(self, at: Fraction) -> Fraction:
+        """EI just right of a station before the right end; 1 where it is uniform and unknown."""
+        found = (one.EI for one in self.stiffness if one.start <= at < one.end)
+        return next(found, Fraction(1))
+
     def station(self, place: str | Fraction) -> Station:
         """The key station of that name, or at that place.
 

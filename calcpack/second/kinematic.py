@@ -14,7 +14,6 @@ from calcpack.exact.linear import Row, solve
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect, EffectKind
-from calcpack.second.bending import stiffness_after
 from calcpack.second.faces import face_or_inner
 from calcpack.second.shapes import (
     COUPLE,
@@ -121,7 +120,7 @@ class _Shapes:
         self.places = [joint.place for joint in self.joints]
         stops = [Fraction(0), *(at for at, _ in self.places), beam.length]
         self.stretches = [
-            Stretch(start, end, 1 / stiffness_after(beam, start))
+            Stretch(start, end, 1 / beam.stiffness_after(start))
             for start, end in itertools.pairwise(stops)
         ]
         self.left = _family(self.stretches, self.joints, 1)

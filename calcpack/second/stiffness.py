@@ -13,7 +13,6 @@ from numpy.typing import NDArray
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect, EffectKind
 from calcpack.second.balance import HELD, Decimals, Element, Indices, balanced, decimal, zeros
-from calcpack.second.bending import stiffness_after
 from calcpack.second.faces import face_or_inner
 
 Floats = NDArray[np.float64]
@@ -103,11 +102,11 @@ def ordinates(beam: Beam, effects: Sequence[Effect]) -> tuple[Ordinates, ...]:
     analysis.
     """
     stations, length = beam.stations, beam.length
-    bending = stiffness_after(beam, Fraction(0))
+    bending = beam.stiffness_after(Fraction(0))
     nodes, freedoms, size = _freedoms(beam)
     members = np.hstack([freedoms[:-1, 1], freedoms[1:, 0]])
     elements = [
-        Element(stiffness_after(beam, one.at) / bending, (other.at - one.at) / length)
+        Element(beam.stiffness_after(one.at) / bending, (other.at - one.at) / length)
         for one, other in itertools.pairwise(stations)
     ]
     balance = balanced(elements, members, _springs(beam, nodes, bending), size)

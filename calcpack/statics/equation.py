@@ -65,11 +65,12 @@ class Equation:
         self, quantity: Effect, lines: Mapping[Effect, Piecewise], length: Fraction
     ) -> Piecewise:
         """The influence line of one quantity from the lines of all others in the equation."""
-        total = self.load_line(length)
+        divisor = -self.term(quantity).coefficient
+        parts = [(self.load_line(length), 1 / divisor)]
         for term in self.terms:
             if term.quantity != quantity:
-                total = total + lines[term.quantity] * term.coefficient
-        return total / -self.term(quantity).coefficient
+                parts.append((lines[term.quantity], term.coefficient / divisor))
+        return Piecewise.combined(parts)
 
     def number_for(self, quantity: Effect, values: Mapping[Effect, Fraction]) -> Fraction:
         """The value of one quantity from the values of all others, no load on the body."""

@@ -210,6 +210,7 @@ def _opened_actions(
     The support stays with the face whose moment is not released; else it has a joint of its own.
     """
     held = list(_support_actions(beam, station))
+    opened = sorted(opened, key=lambda one: one.face or "")
     faces: tuple[Face, ...] = ("left", "right")
     only = opened[0].face if len(opened) == 1 else None
     if only is not None:

@@ -64,7 +64,7 @@ def test_the_stiffness_solution_finds_a_small_difference(
         return tuple(wrong[one] for one in effects)
 
     monkeypatch.setattr(checks, "influence_line", erring)
-    with pytest.raises(Disagreement, match=f"{effect.label}: the stiffness solution differs by 1"):
+    with pytest.raises(Disagreement, match=f"{effect.label}: the stiffness solution differs by"):
         compare_lines(BEAM, "SI", wrong)
 
 
