@@ -52,7 +52,7 @@ def settlement_group(
         if terms:
             assert elastic.reference is not None
             formula = elastic.reference * total(terms)
-            key, symbol = f"{root}/load={row + 1}", Symbol("δ", unit.mark)
+            key, symbol = f"{root}/work={row + 1}", Symbol("δ", unit.mark)
             steps.append(book.state_value(key, symbol, formula, WORK, f"{root}/δ"))
             loads[row] = book.cite(steps[-1])
     reduced, more = _reduced(elastic, root, loads)

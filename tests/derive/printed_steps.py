@@ -19,9 +19,12 @@ OPERATIONS: dict[type[ast.operator], Callable[[Fraction, Fraction], Any]] = {
 }
 FRACTION = re.compile(r"\((-?\d+/\d+)\)")
 NEGATIVE = re.compile(r"\((-\d+\.\d+)\)")
+COUNTED_FROM_NONE = re.compile(r"/(?:segment|offset|axle|ordinate|load|e|g)=(?:0|-)")
 NUMBER = re.compile(r"\d+(?:\.\d+)?")
 CONSTANTS = {"0", "1", "2", "3", "6", "12", "24"}
 """Of areas, of integrals of products of straight lines, and of cubics; inches of a foot."""
+CONVERSIONS = {"12", "144", "1000", "1000000000"}
+"""Inches in a foot, E I in kip ft² or kN m² from ksi in⁴ or MPa mm⁴, millimetres in a metre."""
 TENTHS = {str(tenths) for tenths in range(11)}
 
 
@@ -83,7 +86,7 @@ def unit_of_last_digit(result: str) -> Fraction:
 def check(steps: list[dict[str, Any]], inputs: Mapping[str, Fraction]) -> int:
     """Hold the steps of a results.json to what is promised of them; how many have numbers.
 
-    Keys and ids are unique and what a step uses stands before it. Its numbers, evaluated, miss
+    Keys and ids are unique, what they count is counted from 1, and what a step uses stands before it. Its numbers, evaluated, miss
     the result by one unit of the last digit at most. Each of its literals is what an input, or
     the result of a step that it uses, is printed as, everywhere the same, or else a constant;
     and each of its inputs and uses is there.
@@ -93,6 +96,7 @@ def check(steps: list[dict[str, Any]], inputs: Mapping[str, Fraction]) -> int:
     results: dict[str, str] = {}
     printed: dict[str, set[str]] = {}
     for step in steps:
+        assert not COUNTED_FROM_NONE.search(step["key"]), step["key"]
         assert {*step["uses"]} <= results.keys(), step["key"]
         assert {*step["inputs"]} <= inputs.keys(), step["key"]
         if "numbers" not in step:
@@ -111,7 +115,9 @@ def check(steps: list[dict[str, Any]], inputs: Mapping[str, Fraction]) -> int:
             same = {one for one in there if is_printed(one, inputs[path])}
             printed[path] = printed.get(path, same) & same
             assert printed[path], (step["key"], path)
-        constants = CONSTANTS | (TENTHS if step["key"].startswith("station/") else set())
+        constants = (
+            CONSTANTS | CONVERSIONS | (TENTHS if step["key"].startswith("station/") else set())
+        )
         if "/zero=" in step["key"] or "/axle=" in step["key"]:
             # A root of a cubic, or where the rate of change is zero: stated to its last digit.
             constants = constants | {numbers.strip("()")}

@@ -265,6 +265,7 @@ def test_several_spans_are_laid_end_to_end() -> None:
     assert with_numbers(solution) > 60
     steps = {step["key"]: step for step in results(solution)["steps"]}
     assert steps["station/C"]["numbers"] == "4.00000 + 5.33333"
+    assert steps["station/C"]["symbols"] == "x_C = x_B + l_2"
     assert steps["station/C"]["inputs"] == ["beam.spans[1]"]
     assert steps["station/C"]["uses"] == ["station/B"]
     assert steps["station/C"]["result"] == "9.33333"
