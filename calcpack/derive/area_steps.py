@@ -81,7 +81,8 @@ class _Areas:
         symbol = Symbol("η", f"zero {index}")
         kind = LINE_KIND[self.shape.effect.kind]
         value = self.line.value(zero, "left")
-        there = book.find(f"{root}/ordinate={zero}", symbol, formula, kind, value, f"{root}/η")
+        column = book.ordinates[self.shape.effect, low, "right"].column
+        there = book.find(f"{root}/ordinate={zero}", symbol, formula, kind, value, column)
         self.parts += [step, there]
         return step, there
 

@@ -80,7 +80,7 @@ def _rows(
             loaded = any(_loads(equation, station.at, one) for one in stands_for)
 
             def leaf(other: Effect, at: Fraction = station.at, side: Side = side) -> Formula:
-                return book.cite(book.ordinates[other, at, side])
+                return book.cite(book.ordinates[other, at, side], symbol_of(other))
 
             load = book.place(station.at, LOAD_PLACE) if loaded else None
             formula = solved_for(book, equation, quantity, leaf, load)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import replace
 from fractions import Fraction
 
 from calcpack.derive.elastic_book import ElasticBook
@@ -76,6 +77,7 @@ def reduced_loads(
     loads: Mapping[int, Leaf],
     letter: str,
     kinds: Sequence[QuantityKind],
+    place: str = "",
 ) -> tuple[dict[int, Leaf], list[Step]]:
     """Loads after the elimination: each less λ times the earlier ones; zeros are left out."""
     book, steps = elastic.book, list[Step]()
@@ -91,7 +93,7 @@ def reduced_loads(
         if len(terms) == 1 and row in loads:
             reduced[row] = loads[row]
         elif terms:
-            key, symbol = f"{root}/load={row + 1}", Symbol(letter, f"{row + 1}'")
+            key, symbol = f"{root}/load={row + 1}", Symbol(letter, f"{row + 1}'", place=place)
             column_name = f"{root.split('/at=')[0]}/{letter}"
             steps.append(book.find(key, symbol, total(terms), kinds[row], value, column_name))
             reduced[row] = book.cite(steps[-1])
@@ -128,7 +130,9 @@ def write_redundants(elastic: ElasticBook) -> None:
             if (step := elastic.deflections.get((unit.mark, at, side))) is not None and step.value
         }
         kinds = [of_lengths(unit.power) for unit in elastic.units]
-        reduced, more = reduced_loads(elastic, f"redundants/{suffix}", loads, "δ", kinds)
+        reduced, more = reduced_loads(
+            elastic, f"redundants/{suffix}", loads, "δ", kinds, book.tag_at(at)
+        )
         steps += more
         found: dict[int, Leaf] = {}
         for row in reversed(range(len(elastic.redundants))):
@@ -140,7 +144,8 @@ def write_redundants(elastic: ElasticBook) -> None:
             )
             value = method.lines[redundant].value(at, side)
             column = f"redundants/{key_of(redundant)}"
-            step = book.find(key, symbol_of(redundant), formula, kind, value, column)
+            symbol = replace(symbol_of(redundant), place=book.tag_at(at))
+            step = book.find(key, symbol, formula, kind, value, column)
             steps.append(step)
             found[row] = book.cite(step)
             for one in sides:

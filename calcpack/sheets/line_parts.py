@@ -6,6 +6,7 @@ import itertools
 from collections.abc import Callable, Collection, Iterator, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import lru_cache
 
 from calcpack.exact.numbers import printed
 from calcpack.exact.piecewise import Piecewise
@@ -44,6 +45,13 @@ def stops(line: Piecewise) -> tuple[Fraction, ...]:
     return tuple(sorted(found))
 
 
+@lru_cache(maxsize=64)
+def samples(line: Piecewise) -> tuple[tuple[Fraction, Fraction, Fraction], ...]:
+    """(station, value left, value right) at every stop; a line is drawn several times."""
+    return tuple((at, line.left(at), line.right(at)) for at in stops(line))
+
+
+@lru_cache(maxsize=64)
 def marks(line: Piecewise) -> tuple[Fraction, ...]:
     """Where values are written: ends, jumps and kinks, and the turns of curved pieces."""
     first, *inner, last = line.breaks
@@ -55,15 +63,15 @@ def marks(line: Piecewise) -> tuple[Fraction, ...]:
     return tuple(sorted({first, last, *sharp, *(line.turns() if line.degree > 1 else ())}))
 
 
+@lru_cache(maxsize=64)
 def lobes(line: Piecewise) -> tuple[Lobe, ...]:
     """The stretches of one sign of a line, in order."""
     found: list[Lobe] = []
-    inner = stops(line)
+    inner = samples(line)
     for start, end, sign in line.signed_runs():
-        between = [at for at in inner if start < at < end]
         corners: tuple[tuple[Fraction, Fraction], ...] = (
             (start, line.right(start)),
-            *((at, line.left(at)) for at in between),
+            *((at, left) for at, left, _ in inner if start < at < end),
             (end, line.left(end)),
         )
         if found and found[-1].sign == sign:
@@ -75,7 +83,7 @@ def lobes(line: Piecewise) -> tuple[Lobe, ...]:
 
 def drop_of(line: Piecewise) -> Callable[[Fraction], float]:
     """How far below the axis a value is drawn, in mm: positive values stand above it."""
-    values = [value for stop in stops(line) for value in (line.left(stop), line.right(stop))]
+    values = [value for _, *both in samples(line) for value in both]
     most, least = max(*values, Fraction(0)), min(*values, Fraction(0))
     if most == least:
         return lambda value: 0.0
@@ -89,8 +97,8 @@ def line_items(line: Piecewise, scale: Scale) -> tuple[Item, ...]:
     areas = [_polygon(lobe, scale, drop) for lobe in lobes(line)]
     first, last = line.breaks[0], line.breaks[-1]
     curve = [(first, Fraction(0))]
-    for start, end in itertools.pairwise(stops(line)):
-        curve += [(start, line.right(start)), (end, line.left(end))]
+    for (start, _, value), (end, last_value, _) in itertools.pairwise(samples(line)):
+        curve += [(start, value), (end, last_value)]
     curve.append((last, Fraction(0)))
     path = [(scale(at), drop(value)) for at, value in curve]
     axis = Line((path[0], path[-1]), "thin")

@@ -19,10 +19,12 @@ OPERATIONS: dict[type[ast.operator], Callable[[Fraction, Fraction], Any]] = {
 }
 FRACTION = re.compile(r"\((-?\d+/\d+)\)")
 NEGATIVE = re.compile(r"\((-\d+\.\d+)\)")
-COUNTED_FROM_NONE = re.compile(r"/(?:segment|offset|axle|ordinate|load|e|g)=(?:0|-)")
+COUNTED_FROM_NONE = re.compile(
+    r"/(?:segment|offset|axle|ordinate|load|e|g)=(?:0|-)|^(?:unit|flexibility|curve)/(\d+/)?(?:0|-)"
+)
 NUMBER = re.compile(r"\d+(?:\.\d+)?")
-CONSTANTS = {"0", "1", "2", "3", "6", "12", "24"}
-"""Of areas, of integrals of products of straight lines, and of cubics; inches of a foot."""
+CONSTANTS = {"0", "1", "2", "3", "6", "24"}
+"""Of areas, of integrals of products of straight lines, and of cubics."""
 CONVERSIONS = {"12", "144", "1000", "1000000000"}
 """Inches in a foot, E I in kip ft² or kN m² from ksi in⁴ or MPa mm⁴, millimetres in a metre."""
 TENTHS = {str(tenths) for tenths in range(11)}
@@ -86,10 +88,11 @@ def unit_of_last_digit(result: str) -> Fraction:
 def check(steps: list[dict[str, Any]], inputs: Mapping[str, Fraction]) -> int:
     """Hold the steps of a results.json to what is promised of them; how many have numbers.
 
-    Keys and ids are unique, what they count is counted from 1, and what a step uses stands before it. Its numbers, evaluated, miss
-    the result by one unit of the last digit at most. Each of its literals is what an input, or
-    the result of a step that it uses, is printed as, everywhere the same, or else a constant;
-    and each of its inputs and uses is there.
+    Keys and ids are unique, what they count is counted from 1, and what a step uses stands before
+    it. Its numbers, evaluated, miss the result by one unit of the last digit at most. Each of its
+    literals is what an input, or the result of a step that it uses, is printed as, everywhere the
+    same, or else a constant; and each of its inputs and uses is there. An input that ends within
+    6 decimals is printed whole, and with no more than 3 decimals or what that takes.
     """
     for name in ("key", "id"):
         assert len({step[name] for step in steps}) == len(steps)
@@ -130,4 +133,9 @@ def check(steps: list[dict[str, Any]], inputs: Mapping[str, Fraction]) -> int:
             )
             assert origin, (step["key"], numbers, literal)
         results[step["key"]] = result
+    for path, texts in printed.items():
+        for decimals in range(7):
+            if (inputs[path] * 10**decimals).denominator == 1:
+                assert min(len(text.partition(".")[2]) for text in texts) <= max(3, decimals), path
+                break
     return len(results)

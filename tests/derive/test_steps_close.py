@@ -10,7 +10,14 @@ from functools import cache
 from random import Random
 
 import pytest
-from beams import effects_of, make_beam, random_beam, random_indeterminate, random_train
+from beams import (
+    effects_of,
+    make_beam,
+    movements_of,
+    random_beam,
+    random_indeterminate,
+    random_train,
+)
 from making import make_calculation, make_effect, make_load, make_span_beam
 from printed_steps import check, is_printed, literals
 
@@ -87,7 +94,10 @@ def elastic(seed: int) -> Solution:
         beam, load = random_indeterminate(rng), random_train(rng)
         if beam.stiffness or not any(one.kind == "spring" for one in beam.supports):
             break
-    return solve(make_calculation(beam, rng.sample(effects_of(beam), 3), [load]))
+    effects = rng.sample(effects_of(beam), 3)
+    if beam.stiffness:
+        effects += rng.sample(movements_of(beam), 2)
+    return solve(make_calculation(beam, effects, [load]))
 
 
 @cache
