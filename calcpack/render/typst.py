@@ -41,6 +41,9 @@ from calcpack.sheets.lettering import has_glyph
 WIDEST = 24
 """A column without a share of its own gets one if a cell in it takes more characters of source."""
 
+TOO_TALL = 4000
+"""Source of a cell beyond which its row may be parted by a page's end."""
+
 IN_MATH = Notation(
     plus=" + ",
     minus=" - ",
@@ -118,10 +121,12 @@ class _Writer:
         head = "".join(f"{literal(column.title)}, " for column in table.columns)
         if not any(column.title for column in table.columns):
             head = ""
-        ticked = str(table.ticked).lower()
-        yield f"#calc-table(({widths},), ({aligns},), ({head}), {ticked},"
-        for row in table.rows:
-            yield "  " + ", ".join(f"[{self.text(cell)}]" for cell in row) + ","
+        rows = [[self.text(cell) for cell in row] for row in table.rows]
+        whole = all(len(cell) < TOO_TALL for row in rows for cell in row)
+        flags = f"ticked: {str(table.ticked).lower()}, whole: {str(whole).lower()}"
+        yield f"#calc-table(({widths},), ({aligns},), ({head}), {flags},"
+        for row in rows:
+            yield "  " + ", ".join(f"[{cell}]" for cell in row) + ","
         yield ")"
 
     def _width(self, table: Table, number: int) -> str:

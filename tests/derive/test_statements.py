@@ -129,6 +129,18 @@ def test_a_placement_in_numbers() -> None:
     ]
     assert steps[f"{root}/axle=2"]["numbers"] == "5.000 - 3.000"
     assert steps["area/M_1/positive"]["unit"] == "ft²"
+    said = [steps[key]["symbols"] for key in steps if key.startswith(("train", root))]
+    assert said == [
+        "d_1 = 0",
+        "d_2 = a_2",
+        "z_1 = x_1",
+        "z_2 = z_1 - d_2",
+        "y_1 = η_1",
+        "y_2 = η_A + (η_1 - η_A) * (z_2 - x_A) / (x_1 - x_A)",
+        "E_a = W_1 * y_1 + W_2 * y_2",
+        "E_w = w * A_+",
+        "E_max = (E_a * (1 + I) + E_w) * g",
+    ]
     least = steps["placement/moving[0]/M_1/min"]
     assert (least["numbers"], least["result"]) == ("0", "0.00")
 
