@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 from fractions import Fraction
 
 import pytest
@@ -23,7 +24,7 @@ def girder(spans: int, segments: int, springs: int) -> tuple[Beam, list[Effect]]
     ]
     tenths = [
         start + (end - start) * tenth / 10
-        for start, end in zip(stops, stops[1:], strict=False)
+        for start, end in itertools.pairwise(stops)
         for tenth in range(1, 10)
     ]
     steps = [(stops[-1] * part / segments, 20000 + 4000 * (part % 3)) for part in range(segments)]

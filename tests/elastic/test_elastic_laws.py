@@ -13,7 +13,7 @@ from making import lines_of, make_effect
 from calcpack.elastic.compatibility import force_method, settled
 from calcpack.elastic.redundants import candidates
 from calcpack.elastic.released import release
-from calcpack.model.beam import Beam, Release, Typed
+from calcpack.model.beam import Beam, Release, Support, SupportKind, Typed
 from calcpack.model.request import Effect
 from calcpack.statics.influence import value_of
 from calcpack.statics.plan import plan_of_solution
@@ -32,7 +32,7 @@ def stiff(beam: Beam) -> Beam:
 
 
 def inner(beam: Beam) -> list[str]:
-    held = {one.at for one in (*beam.supports, *beam.releases)}
+    held = {one.at for one in beam.supports} | {one.at for one in beam.releases}
     return [one.name for one in beam.sections if one.at not in held]
 
 
@@ -65,14 +65,20 @@ def test_lines_of_force_need_only_ratios_of_stiffness(seed: int) -> None:
     assert soft == hard * 3
 
 
-def _rigid(beam: Beam) -> list:  # type: ignore[type-arg]
+RIGID: dict[tuple[bool, bool], SupportKind] = {
+    (True, True): "fixed",
+    (True, False): "roller",
+    (False, True): "guided",
+}
+
+
+def _rigid(beam: Beam) -> list[Support]:
+    """The supports with every spring made unyielding."""
     zero = Fraction(0)
     return [
         replace(
             one,
-            kind={(True, True): "fixed", (True, False): "roller", (False, True): "guided"}[
-                (one.holds_vertical, one.holds_rotation)
-            ],
+            kind=RIGID[one.holds_vertical, one.holds_rotation],
             vertical=zero,
             rotational=zero,
         )
