@@ -12,6 +12,7 @@ import itertools
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import cached_property
 
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.beam import Beam
@@ -136,10 +137,15 @@ class Released:
     def ends(self, state: State) -> tuple[tuple[Fraction, Fraction], ...]:
         """EI_0 times the deflection (downward +) at both ends of every segment, by unit loads."""
         return tuple(
-            (
-                self.flexibility(state, self.under_load(one.start, "right")),
-                self.flexibility(state, self.under_load(one.end, "left")),
-            )
+            (self.flexibility(state, first), self.flexibility(state, last))
+            for first, last in self._loaded_ends
+        )
+
+    @cached_property
+    def _loaded_ends(self) -> tuple[tuple[State, State], ...]:
+        """The states under the unit load at both ends of every segment."""
+        return tuple(
+            (self.under_load(one.start, "right"), self.under_load(one.end, "left"))
             for one in self.segments
         )
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 from collections.abc import Iterator
 from fractions import Fraction
 
@@ -15,6 +16,7 @@ from calcpack.derive.steps import (
     Step,
     StepGroup,
 )
+from calcpack.exact.piecewise import Piecewise
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.request import Detail, Effect
 from calcpack.sheets.blocks import (
@@ -41,6 +43,8 @@ from calcpack.statics.system import key_of, symbol_of
 
 BODY_WIDTH = 74.0
 """Width of a free body beside its equations, in mm."""
+SPANS_ACROSS = 6
+"""Spans beside each other in a table of tenth points."""
 DRAWN_DECIMALS = 6
 """Most decimals of an ordinate in a figure."""
 MOST_ROWS = 200
@@ -226,3 +230,24 @@ def _drawn(solution: Solution, areas: AreaGroup, ordinates: tuple[Step, ...]) ->
         line_figure(calculation.beam, line, title, unit, decimals, calculation.units, places)
     )
     yield step_table(solution, areas.steps)
+    if line.degree > 1:
+        yield from _tenths(solution, effect, line, decimals)
+
+
+def _tenths(solution: Solution, effect: Effect, line: Piecewise, decimals: int) -> Iterator[Block]:
+    """The curved line at the tenth points of every span, from the left support to the right."""
+    stops = [support.at for support in solution.calculation.beam.supports]
+    spans = list(itertools.pairwise(stops))
+    yield Paragraph((f"{effect_title(effect)} at the tenth points of the spans:",), leads=True)
+    for first in range(0, len(spans), SPANS_ACROSS):
+        across = spans[first : first + SPANS_ACROSS]
+        columns = (
+            Column("tenth", "right"),
+            *(Column(f"span {first + n}", "right", 1) for n in range(1, len(across) + 1)),
+        )
+        rows: list[tuple[Text, ...]] = []
+        for tenth in range(11):
+            places = [start + (end - start) * tenth / 10 for start, end in across]
+            values = [line.right(at) if tenth == 0 else line.left(at) for at in places]
+            rows.append(((str(tenth),), *((Value(value, decimals),) for value in values)))
+        yield Table(columns, tuple(rows))

@@ -138,6 +138,41 @@ def test_settlements_balance_and_are_reciprocal(seed: int) -> None:
     assert value_of(beam, system, twice, section) == 2 * value_of(beam, system, once, section)
 
 
+@pytest.mark.parametrize("seed", SEEDS)
+def test_a_settlement_does_minus_the_work_of_the_reaction(seed: int) -> None:
+    """Betti: the moment at a section when support B sinks by s is minus s times the reaction of B
+    under a unit kink at the section. The kinked shape is the moment's influence line w, and that
+    reaction is the jump of EI w''' at B."""
+    rng = Random(seed)
+    while True:
+        beam = stiff(random_indeterminate(rng))
+        rigid = replace(beam, supports=tuple(_rigid(beam)))
+        middle = [
+            one
+            for one in rigid.supports
+            if one.kind == "roller" and 0 < one.at < rigid.length
+            if rigid.station(one.at).release is None
+        ]
+        if middle:
+            break
+    support = middle[0]
+    name = inner(rigid)[0]
+    (line,) = lines_of(rigid, [make_effect(rigid, "moment", name)])
+    third = line.derivative().derivative()
+    stiff_after = rigid.stiffness_after(support.at)
+    stiff_before = next(one.EI for one in rigid.stiffness if one.start < support.at <= one.end)
+    reaction = stiff_after * third.slope(support.at, "right") - stiff_before * third.slope(
+        support.at, "left"
+    )
+    degree = classify(rigid, cut_into_bodies(rigid)).degree
+    system = cut_into_bodies(rigid, _first(rigid, degree))
+    method = force_method(release(rigid, system, plan_of_solution(rigid, system)))
+    down = Fraction(1, 40)
+    found = settled(method, {Effect("reaction", support.name, support.at): down})
+    section = make_effect(rigid, "moment", name)
+    assert value_of(rigid, system, found, section) == -down * reaction
+
+
 def _first(beam: Beam, degree: int) -> list[Effect]:
     taken: list[Effect] = []
     for candidate in candidates(beam):
