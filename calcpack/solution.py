@@ -209,13 +209,13 @@ def derive(
             shape = Shape(line.effect, {})
         shapes[line.effect] = shape
         areas[line.effect] = area_group(book, shape, line.line)
+    if elastic is not None:
+        down = conversion_of(book.calculation.units, Effect("deflection", "", Fraction(0)))
+        for one in settled_cases:
+            settlement_group(elastic, one.case, down, one.unknowns, one.effects)
     trains = {load.path: train_group(book, load) for load in book.calculation.moving}
     for found in placements:
         for extreme in (found.greatest, found.least):
             train, shape = trains[found.load.path], shapes[found.effect]
             placement_group(book, train, areas[found.effect], shape, extreme)
-    if elastic is not None:
-        down = conversion_of(book.calculation.units, Effect("deflection", "", Fraction(0)))
-        for one in settled_cases:
-            settlement_group(elastic, one.case, down, one.unknowns, one.effects)
     return book.close()
