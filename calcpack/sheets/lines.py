@@ -231,7 +231,7 @@ def _drawn(solution: Solution, areas: AreaGroup, ordinates: tuple[Step, ...]) ->
     )
     yield step_table(solution, areas.steps)
     if line.degree > 1:
-        yield from _tenths(solution, effect, line, decimals)
+        yield from _tenths(solution, effect, line, most)
 
 
 def _tenths(solution: Solution, effect: Effect, line: Piecewise, decimals: int) -> Iterator[Block]:
