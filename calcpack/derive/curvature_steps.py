@@ -32,11 +32,7 @@ def curvature_group(elastic: ElasticBook, effect: Effect, line: Piecewise) -> Sh
     curvatures: dict[tuple[Fraction, Side], Step] = {}
     kind = CURVATURE_KIND[effect.kind]
     for index, segment in enumerate(elastic.released.segments):
-        places: tuple[tuple[Fraction, Side, int], ...] = (
-            (segment.start, "right", 0),
-            (segment.end, "left", 1),
-        )
-        for at, side, which in places:
+        for which, (at, side) in enumerate(segment.ends):
             terms: list[tuple[int, Formula]] = []
             for row, weight in weights.items():
                 moment = elastic.units[row].printed.moments[index][which]

@@ -43,11 +43,7 @@ def write_deflections(elastic: ElasticBook, sources: Sequence[Source]) -> None:
     released = elastic.released
     ends = [released.ends(source.state) for source in sources]
     for number, segment in enumerate(released.segments):
-        places: tuple[tuple[Fraction, Side, int], ...] = (
-            (segment.start, "right", 0),
-            (segment.end, "left", 1),
-        )
-        for at, side, which in places:
+        for which, (at, side) in enumerate(segment.ends):
             values = [one[number][which] for one in ends]
             if any(values) and not _taken_over(elastic, sources, at, side, values):
                 _deflect(elastic, sources, at, side, values)

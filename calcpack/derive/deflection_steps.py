@@ -188,11 +188,7 @@ def _curvatures(
     steps: list[Step] = []
     kind = CURVATURE_KIND[effect.kind]
     for index, segment in enumerate(released.segments):
-        places: tuple[tuple[Fraction, Side, int], ...] = (
-            (segment.start, "right", 0),
-            (segment.end, "left", 1),
-        )
-        for at, side, which in places:
+        for which, (at, side) in enumerate(segment.ends):
             value = curvature_of(line, at, side)
             if not value:
                 continue

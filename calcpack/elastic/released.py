@@ -36,6 +36,11 @@ class Segment:
     def length(self) -> Fraction:
         return self.end - self.start
 
+    @property
+    def ends(self) -> tuple[tuple[Fraction, Side], tuple[Fraction, Side]]:
+        """Just right of its start, and just left of its end."""
+        return (self.start, "right"), (self.end, "left")
+
 
 @dataclass(frozen=True)
 class State:
@@ -144,10 +149,8 @@ class Released:
     @cached_property
     def _loaded_ends(self) -> tuple[tuple[State, State], ...]:
         """The states under the unit load at both ends of every segment."""
-        return tuple(
-            (self.under_load(one.start, "right"), self.under_load(one.end, "left"))
-            for one in self.segments
-        )
+        loaded = ([self.under_load(*end) for end in one.ends] for one in self.segments)
+        return tuple((first, last) for first, last in loaded)
 
     def curve(self, state: State) -> Piecewise:
         """EI_0 times the deflection (downward +) along the beam, a cubic for each segment.
