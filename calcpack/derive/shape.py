@@ -7,7 +7,7 @@ from fractions import Fraction
 
 from calcpack.derive.book import Book
 from calcpack.derive.steps import Step
-from calcpack.exact.formula import Formula, Leaf, Symbol, constant, total
+from calcpack.exact.formula import Formula, Leaf, constant, total
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.request import Effect
 
@@ -80,7 +80,3 @@ class Shape:
 def curvature_of(line: Piecewise, at: Fraction, side: Side) -> Fraction:
     """The one-sided second derivative."""
     return line.derivative().slope(at, side)
-
-
-def curvature_symbol(tag: str, side: Side) -> Symbol:
-    return Symbol("κ", tag, side)

@@ -20,7 +20,7 @@ OPERATIONS: dict[type[ast.operator], Callable[[Fraction, Fraction], Any]] = {
 FRACTION = re.compile(r"\((-?\d+/\d+)\)")
 NEGATIVE = re.compile(r"\((-\d+\.\d+)\)")
 COUNTED_FROM_NONE = re.compile(
-    r"/(?:segment|offset|axle|ordinate|load|e|g)=(?:0|-)|^(?:unit|flexibility|curve)/(\d+/)?(?:0|-)"
+    r"/(?:segment|offset|axle|ordinate|load|e|g)=(?:0|-)|^(?:unit|flexibility|curve|compatibility)/(\d+/)?(?:0|-)"
 )
 NUMBER = re.compile(r"\d+(?:\.\d+)?")
 CONSTANTS = {"0", "1", "2", "3", "6", "24"}

@@ -145,6 +145,23 @@ def test_a_placement_in_numbers() -> None:
     assert (least["numbers"], least["result"]) == ("0", "0.00")
 
 
+def test_the_released_beam_closes_again() -> None:
+    """Three spans of 10, the load in the middle of the first: M_B = -4 L / 15 x 3 / 8 = -1, and both
+    compatibility equations hold for the values of their steps."""
+    beam = make_beam(30, [(at, "pin") for at in (0, 10, 20, 30)], sections=[5])
+    solution = solve(make_calculation(beam, [make_effect(beam, "moment", "1")]))
+    said = statements(solution)
+    assert said["compatibility/1"] == "Δ_1 = f_11 * X_1 + f_12 * X_2 + δ_1(x) = 0"
+    assert said["compatibility/2"] == "Δ_2 = f_12 * X_1 + f_22 * X_2 + δ_2(x) = 0"
+    values = {step.key: step.value or Fraction(0) for step in solution.derivation.steps}
+    first, second = values["redundants/M_B/at=5"], values["redundants/M_C/at=5"]
+    assert first == -1
+    assert second == Fraction(1, 4)
+    f11, f12, f22 = (values[f"flexibility/{name}"] for name in ("1/1", "1/2", "2/2"))
+    assert f11 * first + f12 * second + values["curve/1/at=5"] == 0
+    assert f12 * first + f22 * second == 0
+
+
 def test_keys_stay_when_a_section_is_added() -> None:
     """What stands at the old stations keeps its key and its value; the numbers on sheets move."""
     load = make_load((12, 0), (6, 3))
