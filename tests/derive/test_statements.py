@@ -146,8 +146,8 @@ def test_a_placement_in_numbers() -> None:
 
 
 def test_the_released_beam_closes_again() -> None:
-    """Three spans of 10, the load in the middle of the first: M_B = -4 L / 15 x 3 / 8 = -1, and both
-    compatibility equations hold for the values of their steps."""
+    """Three spans of 10, the load in the middle of the first: by three moments 4 M_B + M_C = -15/4
+    and M_B + 4 M_C = 0; both compatibility equations hold for the values of their steps."""
     beam = make_beam(30, [(at, "pin") for at in (0, 10, 20, 30)], sections=[5])
     solution = solve(make_calculation(beam, [make_effect(beam, "moment", "1")]))
     said = statements(solution)
