@@ -12,7 +12,7 @@ from calcpack.sheets.blocks import Column, Digits, Expression, Table, Text, Valu
 from calcpack.solution import Solution
 from calcpack.statics.system import symbol_of
 
-OURS = r"\b(?:EI|X|m|f|r|g|e|δ)_[0-9a-z]+\b"
+OURS = r"\b(?:EI|X|m|f|r|g|e)_[0-9a-z]+\b|δ_[^ (]+"
 """Symbols of the force method in our own words."""
 NAMES = {
     "reaction": "Reaction of support {}",
