@@ -72,3 +72,37 @@ def test_a_determinate_beam_settles_without_forces() -> None:
     )
     (case,) = results(solve(read(text.encode())))["permanent"]
     assert [one["value"] for one in case["effects"]] == [0.0] * 4
+
+
+def test_the_curve_of_a_deflection_in_symbols() -> None:
+    """Reciprocity: the curve under the unit load at h, and of the redundant under it, over EI."""
+    found = results(solve(read_file(EXAMPLES / "propped_cantilever" / "calc.toml")))
+    symbols = {step["key"]: step["symbols"] for step in found["steps"]}
+    stated = "D_h = 1000 * (δ_P,h,left(x) + C_A * δ_1(x)) / EI_0"
+    assert symbols["effect/D_h/curve"] == stated
+
+
+def test_an_elimination_that_fills_a_gap() -> None:
+    """Redundants stated from the middle outwards: the first couples the others, which share no
+    span; its elimination fills f_23. The lines are those by rule."""
+    spans = """\
+format = 1
+units = "US"
+cover.title = "Four spans"
+[beam]
+spans = [30, 40, 40, 30]
+supports = [
+  { name = "A", kind = "pin" },
+  { name = "B", kind = "roller" },
+  { name = "C", kind = "roller" },
+  { name = "D", kind = "roller" },
+  { name = "E", kind = "roller" },
+]
+sections = [{ name = "1", at = 50.0 }]
+"""
+    stated = spans + 'redundants = ["moment C", "moment B", "moment D"]\n'
+    calculation = read(stated.encode())
+    found = results(solve(calculation))
+    assert check(found["steps"], calculation.inputs) > 100
+    assert "elimination/2/3/after=1" in {step["key"] for step in found["steps"]}
+    assert found["lines"] == results(solve(read(spans.encode())))["lines"]
