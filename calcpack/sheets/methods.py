@@ -17,8 +17,8 @@ WORDS = (
     "they guard against a fault in the derivation, not against a wrong input. Kinematic statement, "
     "in exact fractions: a unit discontinuity at the quantity displaces the beam into its "
     "influence line. Stiffness solution, in floating point: Euler-Bernoulli elements between "
-    "the key stations. The bound is on the difference of ordinates and slopes, as a part of 1 + the "
-    "largest ordinate (of the largest ordinate for deflections and rotations). The "
+    "the key stations. The bound is on the difference of ordinates and slopes, as a part of 1 + "
+    "the largest ordinate (of the largest ordinate for deflections and rotations). The "
     "placements were compared with a sweep of each train over the stiffness ordinates in 2000 "
     "steps: it never exceeds the value found, nor falls short of it by more than a step allows."
 )
