@@ -11,12 +11,12 @@ from calcpack.derive.redundant_steps import back_substituted, reduced_loads
 from calcpack.derive.steps import SettlementGroup, Step
 from calcpack.exact.formula import Formula, Leaf, Symbol, constant, total
 from calcpack.model.loads import Permanent
-from calcpack.model.request import Effect
+from calcpack.model.request import Effect, EffectKind
 from calcpack.statics.influence import cut_at
 from calcpack.statics.system import key_of, symbol_of
 
-WORK: QuantityKind = "EI"
-"""EI_0 times a rotation per length, or a length: printed in the unit of EI, whatever its power."""
+WORK: dict[int, QuantityKind] = {2: "EI", 3: "EI length"}
+"""What EI_0 times a rotation, or times a displacement, is; by the power of the unit state."""
 
 
 def settlement_group(
@@ -42,10 +42,8 @@ def settlement_group(
     for row, unit in enumerate(elastic.units):
         terms: list[tuple[int, Formula]] = []
         for one in case.settlements:
-            kind = "reaction" if one.down else "moment reaction"
-            support = Effect(
-                "reaction" if kind == "reaction" else "moment reaction", one.at, one.station
-            )
+            held_by: EffectKind = "reaction" if one.down else "moment reaction"
+            support = Effect(held_by, one.at, one.station)
             held = unit.printed.forces.get(support)
             if held is not None:
                 terms.append((1, held * _movement(elastic, one.path, bool(one.down), conversion)))
@@ -53,7 +51,7 @@ def settlement_group(
             assert elastic.reference is not None
             formula = elastic.reference * total(terms)
             key, symbol = f"{root}/work={row + 1}", Symbol("δ", unit.mark)
-            steps.append(book.state_value(key, symbol, formula, WORK, f"{root}/δ"))
+            steps.append(book.state_value(key, symbol, formula, WORK[unit.power], f"{root}/δ"))
             loads[row] = book.cite(steps[-1])
     reduced, more = _reduced(elastic, root, loads)
     steps += more
@@ -95,7 +93,7 @@ def _movement(elastic: ElasticBook, path: str, down: bool, conversion: Fraction)
 def _reduced(
     elastic: ElasticBook, root: str, loads: Mapping[int, Leaf]
 ) -> tuple[dict[int, Leaf], list[Step]]:
-    return reduced_loads(elastic, root, loads, "δ", [WORK] * len(elastic.units))
+    return reduced_loads(elastic, root, loads, "δ", [WORK[unit.power] for unit in elastic.units])
 
 
 def _force(

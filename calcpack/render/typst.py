@@ -123,7 +123,8 @@ class _Writer:
             head = ""
         rows = [[self.text(cell) for cell in row] for row in table.rows]
         whole = all(len(cell) < TOO_TALL for row in rows for cell in row)
-        flags = f"ticked: {str(table.ticked).lower()}, whole: {str(whole).lower()}"
+        stated = {"ticked": table.ticked, "whole": whole, "ruled": table.ruled}
+        flags = ", ".join(f"{name}: {str(flag).lower()}" for name, flag in stated.items())
         yield f"#calc-table(({widths},), ({aligns},), ({head}), {flags},"
         for row in rows:
             yield "  " + ", ".join(f"[{cell}]" for cell in row) + ","

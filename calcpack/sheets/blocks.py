@@ -91,11 +91,12 @@ class Column:
 
 @dataclass(frozen=True)
 class Table:
-    """``ticked`` adds a column of boxes for the checker."""
+    """``ticked`` adds a column of boxes for the checker; ``ruled`` lines to write on by hand."""
 
     columns: tuple[Column, ...]
     rows: tuple[tuple[Text, ...], ...]
     ticked: bool = False
+    ruled: bool = False
 
 
 @dataclass(frozen=True)

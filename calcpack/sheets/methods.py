@@ -8,7 +8,7 @@ from calcpack.derive.kinds import LINE_KIND
 from calcpack.exact.units import SYSTEMS
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Value
 from calcpack.sheets.figures import beam_figure
-from calcpack.sheets.tables import effect_title
+from calcpack.sheets.tables import effect_title, with_symbols
 from calcpack.solution import Solution
 from calcpack.statics.system import place_name, symbol_of
 
@@ -72,10 +72,10 @@ def _equilibrium(solution: Solution) -> tuple[Block, ...]:
                 (Value(sum(values, Fraction(0)), 4),),
             )
         )
-    names = " + ".join(f"R_{one.index}" for one in reactions)
+    names = " + ".join(str(symbol_of(one)) for one in reactions)
     words = f"The reactions just found ({names}) carry the unit load wherever it stands:"
     columns = (Column("load at (just left)", width=2), Column("sum of reactions", "right"))
-    return Paragraph((words,), leads=True), Table(columns, tuple(rows))
+    return Paragraph(with_symbols(solution, words), leads=True), Table(columns, tuple(rows))
 
 
 def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
@@ -99,5 +99,5 @@ def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
             name = str(symbol_of(line.effect))
             columns.append(Column(f"{name}, {unit}" if unit else name, width=3))
         rows = tuple(((place,), *(("",) for _ in lines)) for place in stations)
-        blocks.append(Table(tuple(columns), rows))
+        blocks.append(Table(tuple(columns), rows, ruled=True))
     return tuple(blocks)

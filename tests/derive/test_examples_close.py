@@ -66,6 +66,18 @@ def test_settlement_of_the_middle_support() -> None:
     assert units["permanent/permanent[0]/R_B"] == "kN"
 
 
+@pytest.mark.parametrize(
+    ("redundant", "unit"), [("moment B", "kN·m²"), ("reaction B", "kN·m³"), ("reaction A", "kN·m³")]
+)
+def test_the_work_of_a_settlement_has_the_unit_of_its_redundant(redundant: str, unit: str) -> None:
+    """EI times a rotation where a moment is released, times a displacement where a force is."""
+    stated = TWO_SPANS.replace("sections =", f'redundants = ["{redundant}"]\nsections =')
+    found = results(solve(read(stated.encode())))
+    units = {step["key"]: step["unit"] for step in found["steps"]}
+    assert units["permanent/permanent[0]/work=1"] == unit
+    assert found["permanent"] == results(solve(read(TWO_SPANS.encode())))["permanent"]
+
+
 def test_a_determinate_beam_settles_without_forces() -> None:
     text = TWO_SPANS.replace(
         "sections =", 'releases = [{ name = "h", at = 11.0, kind = "hinge" }]\nsections ='
