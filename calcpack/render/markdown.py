@@ -142,7 +142,7 @@ class _Writer:
                 yield _image(content, kind, alt)
 
     def _table(self, table: Table) -> Iterator[str]:
-        yield _row(escaped(column.title) for column in table.columns)
+        yield _row(self.text(column.head) for column in table.columns)
         yield _row("--:" if column.align == "right" else ":--" for column in table.columns)
         for row in table.rows:
             yield _row(map(self.text, row))

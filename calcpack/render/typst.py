@@ -118,7 +118,7 @@ class _Writer:
     def _table(self, table: Table) -> Iterator[str]:
         widths = ", ".join(self._width(table, number) for number in range(len(table.columns)))
         aligns = ", ".join(column.align for column in table.columns)
-        head = "".join(f"{literal(column.title)}, " for column in table.columns)
+        head = "".join(f"[{self.text(column.head)}], " for column in table.columns)
         if not any(column.title for column in table.columns):
             head = ""
         rows = [[self.text(cell) for cell in row] for row in table.rows]

@@ -84,9 +84,14 @@ class Paragraph:
 class Column:
     """``width`` in parts of what the narrow columns leave; None: as wide as it needs."""
 
-    title: str
+    title: str | Symbol
     align: Literal["left", "right"] = "left"
     width: int | None = None
+    unit: str = ""
+
+    @property
+    def head(self) -> Text:
+        return (self.title, f", {self.unit}" if self.unit else "")
 
 
 @dataclass(frozen=True)

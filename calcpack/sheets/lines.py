@@ -183,7 +183,7 @@ def ordinate_table(
         Column("load at", width=2),
         Column("on body"),
         *((Column("with numbers", width=5),) if in_full else ()),
-        Column(f"result, {unit}" if unit else "result", "right"),
+        Column("result", "right", unit=unit),
         Column("stiffness", "right"),
     )
     rows = []

@@ -96,8 +96,7 @@ def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
         columns = [Column("load at", width=2)]
         for line in lines:
             unit = units[LINE_KIND[line.effect.kind]]
-            name = str(symbol_of(line.effect))
-            columns.append(Column(f"{name}, {unit}" if unit else name, width=3))
+            columns.append(Column(symbol_of(line.effect), width=3, unit=unit))
         rows = tuple(((place,), *(("",) for _ in lines)) for place in stations)
         blocks.append(Table(tuple(columns), rows, ruled=True))
     return tuple(blocks)

@@ -43,7 +43,7 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
         Column(""),
         Column("value", "right"),
         Column("unit"),
-        Column(f"lead axle at, {length}", "right"),
+        Column("lead axle at", "right", unit=length),
         Column("heading"),
         Column("next", "right"),
         Column("proof", "right"),
@@ -214,7 +214,7 @@ def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[
             Column("near candidates"),
             Column("at station", "right"),
             Column("heading"),
-            Column(f"value, {unit}", "right"),
+            Column("value", "right", unit=unit),
         )
         rows = tuple(
             (
