@@ -1,4 +1,4 @@
-"""Stable beams, their effects, and trains: by hand, at random, and for hypothesis."""
+"""Stable beams and their effects: by hand, at random, and for hypothesis."""
 
 from __future__ import annotations
 
@@ -23,7 +23,6 @@ from calcpack.model.beam import (
     SupportKind,
     Typed,
 )
-from calcpack.model.loads import Axle, Heading, MovingLoad
 from calcpack.model.request import Effect, EffectKind
 
 Place = Fraction | int | str
@@ -182,6 +181,21 @@ def _any_support(rng: Random, at: Fraction, inner: bool, release: ReleaseKind | 
     )
 
 
+def round_beam(rng: Random) -> Beam:
+    """Spans of 10 with a section at every 5: one or two with overhangs of 5, or two to four."""
+    count, over = rng.choice(((1, 5), (2, 5), (2, 0), (3, 0), (4, 0)))
+    at = [Fraction(over + 10 * number) for number in range(count + 1)]
+    length = at[-1] + over
+    held: list[Held] = [(one, "pin" if one == at[0] else "roller") for one in at]
+    if not over and rng.random() < 0.3:
+        held[0] = (at[0], "fixed")
+    hinges: list[tuple[Place, ReleaseKind]] = [(at[1] + 5, "hinge")] if count > 2 else []
+    sections = [
+        one for one in range(5, int(length), 5) if one not in (*at, *(x for x, _ in hinges))
+    ]
+    return make_beam(length, held, hinges, sections, [(0, 1000)])
+
+
 def is_stable_and_determinate(beam: Beam) -> bool:
     """Whether the rigid parts between releases can be placed in exactly one way, with no condition
     to spare."""
@@ -287,39 +301,9 @@ def _effects_at(beam: Beam, station: Station) -> list[Effect]:
     ]
 
 
-def random_train(rng: Random) -> MovingLoad:
-    """One to six axles, now and then none but a uniform load; all choices of a moving load."""
-    count = rng.randint(1, 6)
-    uniform = Fraction(rng.choice((0, 0, rng.randint(1, 40))), 10)
-    if uniform and rng.random() < 0.2:
-        count = 0
-    headings: tuple[tuple[Heading, ...], ...] = (("right",), ("left",), ("right", "left"))
-    return MovingLoad(
-        name="Train",
-        axles=tuple(
-            Axle(
-                Fraction(rng.randint(10, 400), 10),
-                Fraction(rng.randint(4, 120), 10) if position else Fraction(0),
-            )
-            for position in range(count)
-        ),
-        uniform=uniform,
-        headings=rng.choice(headings),
-        relieving=rng.choice(("count", "neglect")),
-        allowance=Fraction(rng.randint(0, 40), 100),
-        distribution=Fraction(rng.randint(30, 100), 100),
-        path="moving[0]",
-    )
-
-
 def beams(releases_up_to: int = 3) -> st.SearchStrategy[Beam]:
     """Stable determinate beams, for hypothesis."""
     return _seeds().map(lambda seed: random_beam(Random(seed), releases_up_to))
-
-
-def trains() -> st.SearchStrategy[MovingLoad]:
-    """Moving loads, for hypothesis."""
-    return _seeds().map(lambda seed: random_train(Random(seed)))
 
 
 def _seeds() -> st.SearchStrategy[Any]:

@@ -9,6 +9,7 @@ from datetime import date
 from fractions import Fraction
 
 from beams import Place
+from loads import numbers_of
 
 from calcpack.elastic.compatibility import deflection_line, force_method
 from calcpack.elastic.redundants import redundants_by_rule
@@ -26,7 +27,7 @@ from calcpack.model.beam import (
     Tenth,
     Typed,
 )
-from calcpack.model.loads import Axle, Heading, MovingLoad, Relieving
+from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Calculation, Cover, Effect, EffectKind, Package, Signature
 from calcpack.statics.influence import effect_line, unknown_lines
 from calcpack.statics.plan import plan_of_solution
@@ -34,28 +35,6 @@ from calcpack.statics.stability import classify
 from calcpack.statics.system import cut_into_bodies
 
 COVER = Cover("Ferry ramp girder", "FR-12", prepared=Signature("P. Linden", date(2026, 4, 7)))
-
-
-def make_load(
-    *axles: tuple[Place, Place],
-    uniform: Place = 0,
-    headings: tuple[Heading, ...] = ("right", "left"),
-    relieving: Relieving = "count",
-    allowance: Place = 0,
-    distribution: Place = 1,
-    number: int = 0,
-) -> MovingLoad:
-    """A moving load from (weight, spacing to the axle ahead) of each axle, lead axle first."""
-    return MovingLoad(
-        f"Load {number + 1}",
-        tuple(Axle(Fraction(weight), Fraction(spacing)) for weight, spacing in axles),
-        Fraction(uniform),
-        headings,
-        relieving,
-        Fraction(allowance),
-        Fraction(distribution),
-        f"moving[{number}]",
-    )
 
 
 def make_span_beam(
@@ -103,13 +82,7 @@ def make_calculation(
     for stretch in beam.stiffness:
         values[f"{stretch.path}.EI"] = stretch.EI
     for load in loads:
-        for i, axle in enumerate(load.axles):
-            values[f"{load.path}.axles[{i}].weight"] = axle.weight
-            if i:
-                values[f"{load.path}.axles[{i}].spacing"] = axle.spacing
-        values[f"{load.path}.uniform"] = load.uniform
-        values[f"{load.path}.allowance"] = load.allowance
-        values[f"{load.path}.distribution"] = load.distribution
+        values |= {one.path: one.value for one in numbers_of(load) if one.path}
     plain = {
         "format": 1,
         "units": units,

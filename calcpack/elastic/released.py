@@ -9,6 +9,7 @@ stiffness is uniform and unknown.
 from __future__ import annotations
 
 import itertools
+import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
@@ -54,6 +55,12 @@ class State:
 
     moments: tuple[tuple[Fraction, Fraction], ...]
     springs: Numbers
+
+    @cached_property
+    def whole(self) -> tuple[tuple[tuple[int, int], ...], int]:
+        """The moments as whole numbers of one part, and how many of those make one."""
+        part = math.lcm(*(value.denominator for pair in self.moments for value in pair))
+        return tuple((int(a * part), int(b * part)) for a, b in self.moments), part
 
 
 @dataclass(frozen=True)
@@ -129,15 +136,24 @@ class Released:
         Source: the integral of two straight lines a..b and c..d over a length l is
         l (2 a c + a d + b c + 2 b d) / 6.
         """
-        total = Fraction(0)
-        pairs = zip(self.segments, one.moments, other.moments, strict=True)
-        for segment, (a, b), (c, d) in pairs:
-            if (a or b) and (c or d):
-                integral = segment.length * (2 * a * c + a * d + b * c + 2 * b * d) / 6
-                total += segment.ratio * integral
+        sixths, part = self._sixths
+        (first, first_part), (second, second_part) = one.whole, other.whole
+        whole = sum(
+            sixth * (2 * a * c + a * d + b * c + 2 * b * d)
+            for sixth, (a, b), (c, d) in zip(sixths, first, second, strict=True)
+            if (a or b) and (c or d)
+        )
+        total = Fraction(whole, part * first_part * second_part)
         for spring, stiffness in self.yielding.items():
             total += self.reference * one.springs[spring] * other.springs[spring] / stiffness
         return total
+
+    @cached_property
+    def _sixths(self) -> tuple[tuple[int, ...], int]:
+        """Per segment l EI_0 / (6 EI) as whole numbers of one part, and how many make one."""
+        sixths = [segment.length * segment.ratio / 6 for segment in self.segments]
+        part = math.lcm(*(one.denominator for one in sixths))
+        return tuple(int(one * part) for one in sixths), part
 
     def ends(self, state: State) -> tuple[tuple[Fraction, Fraction], ...]:
         """EI_0 times the deflection (downward +) at both ends of every segment, by unit loads."""

@@ -51,8 +51,8 @@ def _tables(label: str, required: bool = False, choices: tuple[str | int, ...] =
     return Field(label, "table", form="list", required=required, choices=choices)
 
 
-def _later(label: str, default: Any = None) -> Field:
-    return Field(label, "table", default=default, computed=False)
+def _later(label: str) -> Field:
+    return Field(label, "table", computed=False)
 
 
 def _station(label: str, required: bool = True) -> Field:
@@ -63,6 +63,33 @@ def _spring(label: str, kind: str, symbol: str) -> Field:
     return Field(label, kind, symbol, default=0, least=0, beside='kind = "spring"')
 
 
+def _place(label: str, required: bool = True) -> Field:
+    return Field(label, "place", "x", "a name, a station or a length", required=required)
+
+
+def _spacing(pattern: str, label: str, says: str, beside: str = "") -> dict[str, Field]:
+    """A number, a range of two, a list or a least distance."""
+    return {
+        pattern: Field(label, "length", "d", says, "several", beside=beside),
+        f"{pattern}.list": Field(f"{label}, one of", "length", "d", says, "list", above=0),
+        f"{pattern}.least": Field(f"{label}, at least", "length", "d", says, above=0),
+    }
+
+
+def _axles(pattern: str) -> dict[str, Field]:
+    return {
+        f"{pattern}.table": Field(
+            "Table of axles", "name", help="a CSV beside calc.toml: weight and spacing"
+        ),
+        f"{pattern}.axles": _tables("Axles"),
+        f"{pattern}.axles[].weight": Field(
+            "Axle weight", "force", "P", "downward", required=True, above=0
+        ),
+        **_spacing(f"{pattern}.axles[].spacing", "Axle spacing", "to the axle ahead"),
+    }
+
+
+_KINDS = ("reaction", "moment reaction", "shear", "moment", "deflection", "rotation")
 _NAME = "unique among supports, releases and sections"
 _SIDES = ("left", "right")
 _DETAILS = ("every equation", "plan", "table")
@@ -182,7 +209,7 @@ FIELDS: Mapping[str, Field] = {
         "choice",
         form="several",
         required=True,
-        choices=("reaction", "moment reaction", "shear", "moment", "deflection", "rotation"),
+        choices=_KINDS,
     ),
     "effects[].at": Field(
         "Place of the effect",
@@ -194,23 +221,60 @@ FIELDS: Mapping[str, Field] = {
     ),
     "effects[].side": Field("Side", "choice", help="without it both faces", choices=_SIDES),
     "effects[].show": Field("Shown", "choice", choices=_DETAILS),
-    "trains": _later("Trains"),
+    "trains": _tables("Trains"),
+    "trains[].name": Field("Train", "name", required=True),
+    **_axles("trains[]"),
     "moving": _tables("Moving loads"),
     "moving[].name": Field("Moving load", "name", required=True),
-    "moving[].standard": _later("Standard"),
-    "moving[].table": _later("Table of axles"),
-    "moving[].trains": _later("Trains"),
-    "moving[].axles": _tables("Axles"),
-    "moving[].axles[].weight": Field(
-        "Axle weight", "force", "P", "downward", required=True, above=0
+    "moving[].standard": Field("Published model", "text", help="such as HL-93; see models"),
+    "moving[].variant": Field("Variant of the model", "text", beside="standard"),
+    "moving[].scale": Field(
+        "Scale of the model", "number", "k", "multiplies all its loads", above=0, beside="standard"
     ),
-    "moving[].axles[].spacing": Field(
-        "Axle spacing", "length", "d", "to the axle ahead", later=(list, dict), least=0
+    "moving[].length": Field(
+        "Length for the model's rules",
+        "length",
+        "L",
+        "where a number of the model goes by a length",
+        above=0,
+        beside="standard",
     ),
+    "moving[].compared": Field(
+        "Comparison with the standard",
+        "text",
+        help="by whom, when and with which edition",
+        beside="standard",
+    ),
+    "moving[].hogging": _tables("Region of hogging"),
+    "moving[].hogging[].from": _place("Start of hogging"),
+    "moving[].hogging[].to": _place("End of hogging"),
+    "moving[].hogging[].source": Field("Source of the region", "text", required=True),
+    **_axles("moving[]"),
+    "moving[].trains": Field("Train", "name", help="a name from trains", form="list"),
     "moving[].uniform": Field(
         "Uniform load", "line load", "w", "on whatever parts raise the effect", default=0, least=0
     ),
-    "moving[].trailing": _later("Trailing load", default=[]),
+    "moving[].trailing": _tables("Trailing load"),
+    "moving[].trailing[].behind": Field(
+        "Distance behind the last axle", "length", "b", "to its start", least=0
+    ),
+    "moving[].trailing[].ahead": Field(
+        "Distance ahead of the lead axle", "length", "b", "to its start", least=0
+    ),
+    "moving[].trailing[].load": Field("Trailing load", "line load", "q", "downward", above=0),
+    "moving[].trailing[].weight": Field(
+        "Whole trailing load", "force", "Q", "over its length, in place of load", above=0
+    ),
+    "moving[].trailing[].length": Field(
+        "Length of the trailing load", "length", "l", "without it: no end", above=0
+    ),
+    "moving[].trailing[].extent": Field(
+        "Extent of the trailing load",
+        "choice",
+        help="in parts: only where it raises the effect",
+        default="unbroken",
+        choices=("unbroken", "in parts"),
+    ),
     "moving[].heading": Field(
         "Heading", "choice", default="both", choices=("right", "left", "both")
     ),
@@ -219,31 +283,51 @@ FIELDS: Mapping[str, Field] = {
         "choice",
         help="axles that lessen the effect",
         default="count",
-        choices=("count", "neglect"),
-        later=("whole train",),
+        choices=("count", "neglect", "whole train"),
     ),
     "moving[].allowance": Field(
-        "Dynamic allowance",
-        "number",
-        "I",
-        "on axles only",
-        default=0,
-        later=(list,),
-        least=0,
-        most=10,
+        "Dynamic allowance", "number", "I", "on axles only", default=0, least=0, most=10
     ),
+    "moving[].allowance[].of": Field(
+        "Part with allowance", "choice", required=True, choices=("axles", "trailing", "uniform")
+    ),
+    "moving[].allowance[].value": Field(
+        "Dynamic allowance", "number", "I", required=True, least=0, most=10
+    ),
+    "moving[].allowance[].source": Field("Source of the allowance", "text"),
     "moving[].distribution": Field(
         "Distribution",
         "number",
         "g",
         "what of the load this beam takes",
         default=1,
-        later=(list, "from deck"),
+        later=("from deck",),
         above=0,
     ),
-    "moving[].order": _later("Order of trains"),
-    "moving[].spacing": _later("Spacing of trains"),
-    "moving[].absent": _later("Absent trains"),
+    "moving[].distribution[].kind": Field(
+        "Kind of effect", "choice", form="several", choices=_KINDS
+    ),
+    "moving[].distribution[].from": _place("Start of the stretch", required=False),
+    "moving[].distribution[].to": _place("End of the stretch", required=False),
+    "moving[].distribution[].value": Field("Distribution", "number", "g", required=True, above=0),
+    "moving[].distribution[].source": Field("Source of the distribution", "text"),
+    "moving[].order": Field(
+        "Order of trains",
+        "choice",
+        help="any: they can pass",
+        default="fixed",
+        choices=("fixed", "any"),
+        beside="trains",
+    ),
+    **_spacing("moving[].spacing", "Spacing of trains", "last axle to next first", beside="trains"),
+    "moving[].absent": Field(
+        "Absent trains",
+        "choice",
+        help="each: any of them may be missing",
+        default="each",
+        choices=("each", "none"),
+        beside="trains",
+    ),
     "permanent": _tables("Permanent loads"),
     "permanent[].name": Field("Permanent load", "name", required=True),
     "permanent[].uniform": _later("Uniform loads"),

@@ -139,3 +139,7 @@ class Calculation:
     redundants: tuple[Effect, ...] | None = None
     permanent: tuple[Permanent, ...] = ()
     tables: tuple[tuple[str, bytes], ...] = ()
+
+    def detail_of(self, effect: Effect) -> Detail:
+        """How much of an effect's derivation is asked for."""
+        return effect.show or self.package.detail

@@ -8,6 +8,7 @@ from random import Random
 
 import numpy as np
 import pytest
+from numpy.polynomial import Polynomial
 from scipy.interpolate import PPoly  # type: ignore[import-untyped]
 
 from calcpack.exact.piecewise import Piecewise, Side
@@ -95,6 +96,73 @@ def test_zeros_and_turns_of_curved_pieces_are_numpys_roots(seed: int) -> None:
         roots = np.roots([float(c) for c in reversed(coefficients)])
         inside = sorted(1 + r.real for r in roots if abs(r.imag) < 1e-9 and 0 < r.real < 8)
         assert [float(x) for x in found] == pytest.approx(inside, abs=1e-8)
+
+
+@pytest.mark.parametrize("seed", SEEDS)
+def test_mirrored_and_antiderivative(seed: int) -> None:
+    """Reference: scipy at a + b - x, and its antiderivative, which too is 0 at the left end."""
+    rng = Random(seed)
+    breaks = [Fraction(one) for one in (2, rng.randint(3, 5), 7, rng.randint(8, 11), 12)]
+    ours = random_piecewise(rng, rng.randint(0, 4), breaks)
+    theirs = reference(ours)
+    image, area, total = ours.mirrored(), ours.antiderivative(), theirs.antiderivative()
+    for _ in range(20):
+        x = 2 + Fraction(rng.randint(1, 9969), 997)
+        if x.denominator > 1:
+            assert float(image.left(x)) == pytest.approx(float(theirs(float(14 - x))), abs=1e-6)
+            assert float(area.left(x)) == pytest.approx(float(total(float(x))), abs=1e-7)
+    for at in ours.breaks:
+        assert image.left(14 - at) == ours.right(at)
+        assert image.right(14 - at) == ours.left(at)
+        assert area.left(at) == area.right(at) == ours.integral(Fraction(2), at)
+    assert image.mirrored() == ours
+
+
+@pytest.mark.parametrize("seed", SEEDS)
+def test_jumps_put_the_function_together_again(seed: int) -> None:
+    """Added up from left to right, each about its own breakpoint, as numpy's polynomials; right of
+    the last breakpoint what was said to follow is left."""
+    rng = Random(seed)
+    ours = random_piecewise(rng, rng.randint(0, 4))
+    after = tuple(Fraction(rng.randint(-9, 9)) for _ in range(rng.randint(1, 5)))
+    jumps = ours.jumps(after)
+    assert len(jumps) == len(ours.breaks)
+    theirs = reference(ours)
+    whole = Polynomial([0.0])
+    for count, (at, jump) in enumerate(zip(ours.breaks, jumps, strict=True)):
+        whole = whole + Polynomial([float(one) for one in jump])(Polynomial([-float(at), 1]))
+        if count + 1 < len(ours.breaks):
+            for part in (0.1, 0.5, 0.9):
+                x = float(at + (ours.breaks[count + 1] - at) * Fraction(part))
+                assert whole(x) == pytest.approx(float(theirs(x)), abs=1e-6)
+    beyond = sum(float(value) * 0.7**power for power, value in enumerate(after))
+    assert whole(float(ours.breaks[-1]) + 0.7) == pytest.approx(beyond, abs=1e-6)
+
+
+def test_what_continues_jumps_by_nothing() -> None:
+    """x² on (0, 4), with a corner of size 3 at 2: value and curvature do not change there."""
+    line = Piecewise.from_pieces([(0, 2, (0, 0, 1)), (2, 4, (4, 7, 1))])
+    assert [*line.jumps((Fraction(0),))[1]] == [0, 3, 0]
+    parabola = Piecewise.from_pieces([(0, 4, (0, 0, 1))])
+    assert [*parabola.jumps((Fraction(16), Fraction(8), Fraction(1)))[1]] == [0, 0, 0]
+
+
+@pytest.mark.parametrize("seed", SEEDS)
+def test_part_of_sign(seed: int) -> None:
+    """numpy's maximum and minimum of the function and 0, a hair aside of roots."""
+    rng = Random(seed)
+    ours = random_piecewise(rng, rng.randint(0, 3))
+    theirs = reference(ours)
+    above, below = ours.part_of_sign(1), ours.part_of_sign(-1)
+    x = (np.arange(1200) + 0.37) / 100
+    values = theirs(x)
+    for part, expected in ((above, np.maximum(values, 0)), (below, np.minimum(values, 0))):
+        found = [float(part.right(Fraction(float(at)))) for at in x]
+        assert found == pytest.approx(expected, abs=1e-6)
+    assert above + below == ours
+    assert [*map(float, ours.areas())] == pytest.approx(
+        [float(one.integral(Fraction(0), Fraction(12))) for one in (above, below)], abs=1e-6
+    )
 
 
 @pytest.mark.parametrize("seed", SEEDS)
