@@ -11,7 +11,7 @@ from calcpack.intake.cover import read_assumptions, read_cover, read_package
 from calcpack.intake.document import MOST_BYTES, parse
 from calcpack.intake.echo import echo, inputs, plain
 from calcpack.intake.effects import read_effects
-from calcpack.intake.moving import check_names, read_moving
+from calcpack.intake.moving import check_compared, check_names, read_moving
 from calcpack.intake.permanent import read_permanent
 from calcpack.intake.reading import Reading
 from calcpack.intake.redundants import read_redundants
@@ -53,7 +53,9 @@ def read(data: bytes, source: str = "calc.toml", folder: Path | None = None) -> 
     outline = read_beam(reading, folder)
     redundants = read_redundants(reading, outline)
     effects, beam = read_effects(reading, outline)
-    moving, permanent = read_moving(reading), read_permanent(reading, outline)
+    moving, numbers = read_moving(reading, outline, effects, folder)
+    permanent = read_permanent(reading, outline)
+    check_compared(reading, moving)
     check_names(reading)
     check_stiffness_stated(reading)
     reading.finish()
@@ -71,7 +73,7 @@ def read(data: bytes, source: str = "calc.toml", folder: Path | None = None) -> 
         effects,
         moving,
         stated,
-        inputs(reading),
+        {**inputs(reading), **numbers},
         echo(reading),
         data.decode("utf-8-sig").replace("\r\n", "\n"),
         redundants,

@@ -43,7 +43,7 @@ def inputs(reading: Reading) -> dict[str, Fraction]:
 def echo(reading: Reading) -> tuple[Entry, ...]:
     """A row for each value, typed or default, in the order of the field table.
 
-    The values of a table of stiffness come after those of the beam. An effect is one row; so are
+    The values of a table come after those of the part that names it. An effect is one row; so are
     the default effects where the file states none.
     """
     rows: dict[str, list[Entry]] = {key: [] for key in FIELDS}
@@ -51,8 +51,7 @@ def echo(reading: Reading) -> tuple[Entry, ...]:
         is_number = isinstance(found.value, Fraction)
         unit = unit_of(found.field.kind, reading.units) if is_number else ""
         row = Entry(path, found.field.label, _said(found), unit, found.entered)
-        in_table = path.rpartition("[")[0] in reading.tables
-        rows["beam" if in_table else path.partition(".")[0].partition("[")[0]].append(row)
+        rows[reading.stated_at(path).partition(".")[0].partition("[")[0]].append(row)
     rows["effects"] = [_effect(reading, path) for path in reading.items("effects")]
     if not rows["effects"]:
         rows["effects"] = [Entry("effects", "Effects", _DEFAULT_EFFECTS, "", False)]

@@ -80,7 +80,8 @@ class Reading:
 
     def refused(self, path: str) -> bool:
         """Whether a problem was found at exactly this path."""
-        return any(problem.path == path for problem in self.problems)
+        called = self.called(path)
+        return any(problem.path == called for problem in self.problems)
 
     def lacks(self, path: str) -> bool:
         """Whether a table stands there in the file that does not state this key."""
@@ -88,7 +89,7 @@ class Reading:
 
     def items(self, path: str) -> list[str]:
         """The paths of a list's items, or of the one value of a field that may have several."""
-        raw, field = self._raw.get(path), field_at(path)
+        raw, field = self._raw.get(path), field_at(self._pattern(path))
         if isinstance(raw, list):
             return [f"{path}[{index}]" for index in range(len(raw))]
         return [path] if raw is not None and field and field.form == "several" else []
@@ -100,6 +101,11 @@ class Reading:
             self._faulty[called] = row
         self.problems.append(Problem(called, self.said(path) if said is None else said, needs))
 
+    def withdraw(self, path: str) -> None:
+        """Take back a default where something else holds."""
+        if not self.given(path):
+            self.values.pop(path, None)
+
     def called(self, path: str) -> str:
         """What messages call a path: itself, or the row and the column of a table."""
         row = self._row(path)
@@ -107,6 +113,11 @@ class Reading:
             return path
         key = path.removeprefix(row.path).removeprefix(".")
         return f"{row.called}, {row.columns.get(key, key)}" if key else row.called
+
+    def stated_at(self, path: str) -> str:
+        """Where calc.toml states a path: there, or where it names the table that holds it."""
+        row = self._row(path)
+        return path if row is None else row.named_at
 
     def read_row(self, row: Row) -> None:
         """Read a row of a table key by key, as an item of its list would be."""
@@ -185,6 +196,8 @@ class Reading:
                 self.refuse(path, "not computed by this release")
         elif not self._meant(field, path):
             self.refuse(path, f"must be left out without {field.beside}")
+        elif field.kind != "table" and self._is_nested(path, raw):
+            self._read_nested(path, raw)
         elif field.form == "one" or (field.form == "several" and not isinstance(raw, list)):
             self._read_item(field, path, raw)
         elif not isinstance(raw, list):
@@ -196,6 +209,27 @@ class Reading:
         else:
             for index, item in enumerate(raw):
                 self._read_item(field, f"{path}[{index}]", item)
+
+    def _is_nested(self, path: str, raw: Any) -> bool:
+        """Whether a table, or a list of tables, stands where a single value might."""
+        pattern = self._pattern(path)
+        return (isinstance(raw, dict) and pattern in KEYS) or (
+            isinstance(raw, list) and f"{pattern}[]" in KEYS
+        )
+
+    def _read_nested(self, path: str, raw: Any) -> None:
+        if isinstance(raw, dict):
+            self._read_table(raw, path)
+        elif not raw:
+            self.refuse(path, "must not be empty")
+        elif len(raw) > LONGEST_LIST:
+            self.refuse(path, f"must have at most {LONGEST_LIST:,}", f"{len(raw):,} items")
+        else:
+            for index, item in enumerate(raw):
+                if isinstance(item, dict):
+                    self._read_table(item, f"{path}[{index}]")
+                else:
+                    self.refuse(f"{path}[{index}]", "must be a table")
 
     def _meant(self, field: Field, path: str) -> bool:
         """Whether the table states what the field has no meaning without, as far as is known."""

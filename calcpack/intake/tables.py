@@ -44,8 +44,8 @@ def open_table(reading: Reading, named_at: str, folder: Path | None) -> Table | 
         return None
     path = _path_within(folder, name)
     if path is None:
-        needs = "must be a CSV in the folder of calc.toml, such as stiffness.csv"
-        reading.refuse(named_at, needs)
+        like = "stiffness.csv" if named_at.startswith("beam.stiffness") else "axles.csv"
+        reading.refuse(named_at, f"must be a CSV in the folder of calc.toml, such as {like}")
         return None
     content = _content(path)
     if content is None:

@@ -2,11 +2,15 @@
 
 from __future__ import annotations
 
+import dataclasses
 import re
+from collections.abc import Iterator
+from typing import Any
 
 from calcpack.errors import InputRefused, Problem
 from calcpack.intake import read
 from calcpack.intake.shown import unprintable
+from calcpack.model.loads import Given
 
 US = """\
 format = 1
@@ -130,6 +134,81 @@ name = "Jacking"
 settlements = [ { at = 80, down = "-12 mm" } ]
 """
 
+LOADS = """\
+format = 1
+units = "US"
+cover.title = "Approach spans under loads of every form"
+
+[beam]
+length = 140
+supports = [
+  { name = "A", at = 0, kind = "pin" },
+  { name = "B", at = 50, kind = "roller" },
+  { name = "C", at = 90, kind = "roller" },
+  { name = "D", at = 140, kind = "roller" },
+]
+sections = [ { name = "mid", at = 20 } ]
+
+[[trains]]
+name = "Tug"
+axles = [ { weight = 30 }, { weight = "40 kip", spacing = [12.5, "20 ft"] } ]
+
+[[trains]]
+name = "Trailer"
+axles = [ { weight = 22.5 }, { weight = 22.5, spacing = 4 } ]
+
+[[moving]]
+name = "Hauler"
+axles = [
+  { weight = 8 },
+  { weight = 32, spacing = { list = [6, 11.0, "16 ft"] } },
+  { weight = 33, spacing = { least = 15 } },
+]
+uniform = 0.2
+heading = "left"
+relieving = "whole train"
+allowance = [
+  { of = "axles", value = 0.33, source = "Permit policy, 4.2" },
+  { of = "uniform", value = 0.1 },
+]
+distribution = [
+  { kind = ["moment", "shear"], from = "A", to = 70, value = 0.7, source = "sheet D-2" },
+  { kind = "moment", value = 0.65 },
+  { value = 0.8 },
+]
+
+[[moving]]
+name = "Convoy"
+trains = ["Tug", "Trailer"]
+order = "any"
+spacing = { list = [30, "40 ft"] }
+absent = "none"
+trailing = [
+  { behind = 10, load = 0.64 },
+  { ahead = "5 ft", weight = 20, length = 8, extent = "in parts" },
+]
+
+[[moving]]
+name = "Highway"
+standard = "HL-93"
+variant = "design"
+scale = 1.1
+hogging = [ { from = 35, to = "C", source = "sheet D-5" } ]
+compared = "P. Linden, 2026-04-02, with the 9th edition"
+
+[[moving]]
+name = "Rail"
+standard = "Cooper E80"
+variant = "rail"
+length = "50 ft"
+heading = "right"
+
+[[moving]]
+name = "Metric rail"
+standard = "LM71"
+allowance = [ { of = "axles", value = 0.2 }, { of = "trailing", value = 0.2 } ]
+"""
+
 SHORT = """\
 format = 1
 units = "SI"
@@ -155,6 +234,18 @@ def faults(text: str | bytes, source: str = "calc.toml") -> list[str]:
     except InputRefused as refused:
         return str(refused).split("\n")
     return []
+
+
+def givens(value: Any) -> Iterator[Given]:
+    """Every number of a value, those of its rules too."""
+    if isinstance(value, Given):
+        yield value
+    if isinstance(value, tuple):
+        for item in value:
+            yield from givens(item)
+    elif dataclasses.is_dataclass(value):
+        for field in dataclasses.fields(value):
+            yield from givens(getattr(value, field.name))
 
 
 def check_lines(lines: list[str], problems: tuple[Problem, ...]) -> None:

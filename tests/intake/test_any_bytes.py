@@ -8,12 +8,12 @@ import re
 import rfc8785
 from hypothesis import given, settings
 from hypothesis import strategies as st
-from intake_samples import SHORT, SI, SPRUNG, US, changed, check_lines
+from intake_samples import LOADS, SHORT, SI, SPRUNG, US, changed, check_lines, givens
 
 from calcpack.errors import InputRefused
 from calcpack.intake import read
 
-SAMPLES = (US, SI, SHORT, SPRUNG)
+SAMPLES = (US, SI, SHORT, SPRUNG, LOADS)
 
 TOKEN = re.compile(r'"[^"\n]*"|[\w.+-]+|\S')
 
@@ -25,6 +25,8 @@ ODD = re.findall(
     "fixed" "guided" "slide" "hinge" "spring" "both" "left" "reaction" "shear" "moment reaction"
     "moment B" "moment C right" "reaction C" "3 kip/ft" "4 in4" "5 rad" "6 mm" "deflection"
     down turn EI E I from to vertical table column "s.csv"
+    "HL-93" "LM71" "SW/0" "design" "any" "none" "each" "whole train" "in parts" "Tug" "axles"
+    list least spacing weight load behind ahead of value source trains standard variant order
     at name kind spans length face side axles = , [ ] { } # ' \\ "\\u0000" "\\u202e" "é" x.y
     """,
 )
@@ -51,6 +53,12 @@ def outcome(data: bytes) -> bool:
     redundants = calculation.redundants or ()
     assert len(set(redundants)) == len(redundants)
     assert all(one.settlements for one in calculation.permanent)
+    for load in calculation.moving:
+        assert 1 <= len(load.cases) <= 64
+        assert all(case.trains or case.uniform for case in load.cases)
+        assert all(load.share(one.kind, one.station) for one in calculation.effects)
+        for one in givens((load.cases, load.shares)):
+            assert one.rule or not one.path or calculation.inputs[one.path] == one.value
     assert len({entry.path for entry in calculation.echo}) == len(calculation.echo)
     return True
 

@@ -6,7 +6,7 @@ import tomllib
 from collections.abc import Iterator
 from typing import Any
 
-from intake_samples import SHORT, SI, SPRUNG, US, changed
+from intake_samples import LOADS, SHORT, SI, SPRUNG, US, changed
 
 from calcpack.intake import read
 from calcpack.model.fields import FIELDS, pattern_of
@@ -29,7 +29,7 @@ def rows(text: str) -> dict[str, Entry]:
 
 
 def test_every_value_typed_has_one_row() -> None:
-    for text in (US, SI, SHORT, SPRUNG):
+    for text in (US, SI, SHORT, SPRUNG, LOADS):
         echo = read(text.encode()).echo
         entered = [entry.path for entry in echo if entry.entered]
         typed = {path for path in leaves(tomllib.loads(text)) if not path.startswith("effects")}
@@ -40,7 +40,7 @@ def test_every_value_typed_has_one_row() -> None:
 
 def test_rows_follow_the_field_table() -> None:
     order = list(FIELDS)
-    for text in (US, SI, SPRUNG):
+    for text in (US, SI, SPRUNG, LOADS):
         heads = [entry.path.partition(".")[0].partition("[")[0] for entry in rows(text).values()]
         places = [order.index(head) for head in heads]
         assert places == sorted(places)
@@ -113,6 +113,55 @@ def test_stiffness_and_settlements_have_their_units() -> None:
         ("permanent[1].settlements[0].at", "80", "ft"),
     ):
         assert (echo[path].said, echo[path].unit) == (said, unit)
+
+
+def test_loads_of_every_form_have_their_labels_and_units() -> None:
+    echo = rows(LOADS)
+    for path, label, said, unit in (
+        ("trains[0].name", "Train", "Tug", ""),
+        ("trains[0].axles[1].weight", "Axle weight", "40 kip = 40", "kip"),
+        ("trains[0].axles[1].spacing[0]", "Axle spacing", "12.5", "ft"),
+        ("trains[0].axles[1].spacing[1]", "Axle spacing", "20 ft = 20", "ft"),
+        ("trains[1].axles[1].spacing", "Axle spacing", "4", "ft"),
+        ("moving[0].axles[1].spacing.list[2]", "Axle spacing, one of", "16 ft = 16", "ft"),
+        ("moving[0].axles[2].spacing.least", "Axle spacing, at least", "15", "ft"),
+        ("moving[0].allowance[0].of", "Part with allowance", "axles", ""),
+        ("moving[0].allowance[0].value", "Dynamic allowance", "0.33", ""),
+        ("moving[0].allowance[0].source", "Source of the allowance", "Permit policy, 4.2", ""),
+        ("moving[0].distribution[0].kind[1]", "Kind of effect", "shear", ""),
+        ("moving[0].distribution[0].from", "Start of the stretch", "A", ""),
+        ("moving[0].distribution[0].to", "End of the stretch", "70", "ft"),
+        ("moving[0].distribution[1].kind", "Kind of effect", "moment", ""),
+        ("moving[0].distribution[2].value", "Distribution", "0.8", ""),
+        ("moving[1].trains[1]", "Train", "Trailer", ""),
+        ("moving[1].spacing.list[1]", "Spacing of trains, one of", "40 ft = 40", "ft"),
+        ("moving[1].trailing[0].behind", "Distance behind the last axle", "10", "ft"),
+        ("moving[1].trailing[0].load", "Trailing load", "0.64", "kip/ft"),
+        ("moving[1].trailing[1].ahead", "Distance ahead of the lead axle", "5 ft = 5", "ft"),
+        ("moving[1].trailing[1].weight", "Whole trailing load", "20", "kip"),
+        ("moving[1].trailing[1].length", "Length of the trailing load", "8", "ft"),
+        ("moving[2].scale", "Scale of the model", "1.1", ""),
+        ("moving[2].hogging[0].from", "Start of hogging", "35", "ft"),
+        ("moving[2].hogging[0].to", "End of hogging", "C", ""),
+        ("moving[3].length", "Length for the model's rules", "50 ft = 50", "ft"),
+    ):
+        assert echo[path] == Entry(path, label, said, unit, True)
+
+
+def test_of_a_published_model_nothing_is_a_default_that_the_model_states() -> None:
+    defaults = {path: entry.said for path, entry in rows(LOADS).items() if not entry.entered}
+    assert {path: said for path, said in defaults.items() if path.startswith("moving")} == {
+        "moving[1].uniform": "0",
+        "moving[1].trailing[0].extent": "unbroken",
+        "moving[1].heading": "both",
+        "moving[1].relieving": "count",
+        "moving[1].allowance": "0",
+        "moving[1].distribution": "1",
+        "moving[2].distribution": "1",
+        "moving[3].distribution": "1",
+        "moving[4].distribution": "1",
+    }
+    assert "moving[2].allowance" not in read(LOADS.encode()).inputs
 
 
 def test_labels_and_units_are_those_of_the_fields() -> None:

@@ -16,7 +16,7 @@ from intake_samples import SHORT, SI, US, changed
 from calcpack.errors import InputRefused
 from calcpack.intake import read, read_file
 from calcpack.model.beam import Beyond, Datum, Release, Support, Tenth, Typed
-from calcpack.model.loads import Axle
+from calcpack.model.loads import Gap, Given, Share
 from calcpack.model.request import Assumption, Revision, Signature
 
 FOOT = Fraction(3048, 10000)  # metres, the international foot
@@ -48,15 +48,28 @@ def test_a_full_file_in_us_units() -> None:
         Release("h1", Fraction(85, 2), "hinge", Typed("beam.releases[0].at")),
         Release("h2", Fraction(62), "hinge", Typed("beam.releases[1].at")),
     )
-    load = calculation.moving[0]
-    assert load.axles == (
-        Axle(Fraction(17), Fraction(0)),
-        Axle(Fraction(38), Fraction(53, 4)),
-        Axle(Fraction(38), Fraction(19, 4)),
+    (load,) = calculation.moving
+    (case,) = load.cases
+    given = {one.path.removeprefix("moving[0]."): one.value for one in case.numbers}
+    assert given == {
+        "axles[0].weight": 17,
+        "axles[1].weight": 38,
+        "axles[1].spacing": Fraction(53, 4),
+        "axles[2].weight": 38,
+        "axles[2].spacing": Fraction(19, 4),
+        "uniform": Fraction(1, 20),
+        "allowance": Fraction(3, 10),
+    }
+    first, second, third = case.axles
+    assert (first.gap, second.gap, third.gap and third.gap.fixed) == (
+        None,
+        Gap((Given(Fraction(53, 4), "moving[0].axles[1].spacing"),)),
+        True,
     )
-    assert (load.name, load.path, load.uniform) == ("Haul truck", "moving[0]", Fraction(1, 20))
-    assert (load.headings, load.relieving) == (("right",), "neglect")
-    assert (load.allowance, load.distribution) == (Fraction(3, 10), Fraction(13, 20))
+    assert (load.name, load.path, load.standard) == ("Haul truck", "moving[0]", None)
+    assert (case.headings, case.relieving, case.name) == (("right",), "neglect", "")
+    assert case.allowances == (("axles", Given(Fraction(3, 10), "moving[0].allowance")),)
+    assert load.shares == (Share(Given(Fraction(13, 20), "moving[0].distribution")),)
 
 
 def test_a_nameless_place_of_an_effect_becomes_a_nameless_section() -> None:
@@ -165,7 +178,8 @@ def test_an_empty_list_states_nothing() -> None:
     more = "releases = []\nsections = []\n[[moving]]\nname = 'T'\nuniform = 1\naxles = []\n"
     calculation = read((SHORT + more).encode())
     assert calculation.beam == read(SHORT.encode()).beam
-    assert calculation.moving[0].axles == ()
+    (case,) = calculation.moving[0].cases
+    assert (case.axles, case.uniform) == ((), Given(Fraction(1), "moving[0].uniform"))
 
 
 def test_a_byte_order_mark_and_windows_lines_do_no_harm() -> None:
