@@ -1,4 +1,4 @@
-"""The command line: ``calcpack new``, ``solve`` and ``issue``."""
+"""The command line: ``calcpack new``, ``solve``, ``issue`` and ``models``."""
 
 from __future__ import annotations
 
@@ -13,6 +13,8 @@ from pathlib import Path
 from calcpack.errors import CalcpackError, Disagreement, InputRefused, OutputFailed, Problem
 
 DONE, DISAGREES, REFUSED, FAILED = 0, 1, 2, 3
+STOPPED = 130
+"""What a shell says of a command that was interrupted."""
 
 
 def main(arguments: Sequence[str] | None = None) -> int:
@@ -20,11 +22,15 @@ def main(arguments: Sequence[str] | None = None) -> int:
 
     Returns:
         0 done; 1 a check did not hold; 2 input refused, one line per fault on standard error;
-        3 disk, kernel or typesetter failed. After 2 or 3 nothing has been written.
+        3 disk, kernel or typesetter failed; 130 it was stopped. After 2, 3 or 130 nothing has
+        been written.
     """
     chosen = _parser().parse_args(arguments)
     try:
         chosen.run(chosen)
+    except KeyboardInterrupt:
+        print("calcpack: stopped; nothing was written", file=sys.stderr)
+        return STOPPED
     except InputRefused as refused:
         for problem in refused.problems:
             print(problem, file=sys.stderr)
@@ -55,6 +61,9 @@ def _parser() -> argparse.ArgumentParser:
     issue.add_argument("folder", type=Path, metavar="FOLDER")
     issue.add_argument("--out", type=Path, metavar="PDF", help="default: FOLDER/package.pdf")
     issue.set_defaults(run=_issue)
+    models = commands.add_parser("models", help="list the published load models, or print one")
+    models.add_argument("name", nargs="*", metavar="NAME", help="a model, such as HL-93")
+    models.set_defaults(run=_models)
     return parser
 
 
@@ -70,16 +79,17 @@ def _solve(chosen: argparse.Namespace) -> None:
     from calcpack.results import as_bytes, results
     from calcpack.solution import solve
 
-    solution = solve(read_file(chosen.calculation))
+    calculation = read_file(chosen.calculation)
+    with _Bar() as bar:
+        solution = solve(calculation, bar.search)
     found = as_bytes(results(solution)) if chosen.json else to_text(solution).encode()
     sys.stdout.buffer.write(found)
 
 
 def _issue(chosen: argparse.Namespace) -> None:
     import nbformat
-    from tqdm import tqdm
 
-    from calcpack.export.issue import PHASES, issue
+    from calcpack.export.issue import issue
     from calcpack.export.templates import template_folder
 
     own = chosen.folder / "calculation.ipynb"
@@ -89,14 +99,47 @@ def _issue(chosen: argparse.Namespace) -> None:
     except (ValueError, nbformat.ValidationError) as error:
         needs = "must be a notebook of format 4"
         raise InputRefused([Problem("calculation.ipynb", type(error).__name__, needs)]) from error
-    with tqdm(total=PHASES, disable=None, leave=False, bar_format="{bar:20} {desc}") as bar:
-
-        def report(phase: str) -> None:
-            bar.set_description_str(phase)
-            bar.update()
-
-        package = issue(notebook, chosen.folder, report)
+    with _Bar() as bar:
+        package = issue(notebook, chosen.folder, bar.phase, bar.search)
     _write(chosen.out or chosen.folder / "package.pdf", package)
+
+
+def _models(chosen: argparse.Namespace) -> None:
+    from calcpack.intake.reading import nearest
+    from calcpack.intake.shown import shown
+    from calcpack.intake.standards import model_names, read_model
+    from calcpack.render.models import describe_model, list_models
+
+    if not chosen.name:
+        found = list_models()
+    else:
+        name = " ".join(chosen.name)
+        if name not in model_names():
+            needs = f"is not a known model; {nearest(name, model_names(), 3)}"
+            raise InputRefused([Problem("models", shown(name), needs)])
+        found = describe_model(read_model(name))
+    sys.stdout.buffer.write(found.encode())
+
+
+class _Bar:
+    """Progress on a terminal: the phase at hand, and within the search part by part."""
+
+    def __enter__(self) -> _Bar:
+        from tqdm import tqdm
+
+        form = "{bar:20} {n_fmt}/{total_fmt} {desc}"
+        self._bar = tqdm(total=1, disable=None, leave=False, bar_format=form)
+        return self
+
+    def __exit__(self, *raised: object) -> None:
+        self._bar.close()
+
+    def phase(self, name: str) -> None:
+        self.search(0, 1, name)
+
+    def search(self, done: int, parts: int, what: str) -> None:
+        self._bar.total, self._bar.n = parts, done
+        self._bar.set_description_str(what)
 
 
 def _write(path: Path, content: bytes) -> None:

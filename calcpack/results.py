@@ -4,20 +4,23 @@ from __future__ import annotations
 
 import hashlib
 import json
-from fractions import Fraction
+from collections.abc import Sequence
 from importlib.metadata import version
 from typing import Any
 
 import rfc8785
 
+from calcpack.analysis import Line
 from calcpack.derive.kinds import LINE_KIND
 from calcpack.exact.numbers import exact_text
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Candidate, Governing, total_effect
-from calcpack.moving.placement import Position
-from calcpack.solution import Line, Placement, Settled, Solution
+from calcpack.moving.absolute import Absolute
+from calcpack.moving.critical import Candidate, Governing, Tie
+from calcpack.moving.envelope import Envelope
+from calcpack.moving.placement import AxleShare, Stretch, StripShare
+from calcpack.solution import Placement, Settled, Solution
 from calcpack.statics.plan import PlanStep, equation_in_words
 from calcpack.statics.system import symbol_of
 
@@ -46,8 +49,8 @@ def results(solution: Solution) -> Json:
         "lines": [_line(solution, line) for line in solution.lines],
         "placements": [_placement(placement) for placement in solution.placements],
         "permanent": [_settled(one) for one in solution.settled],
-        "envelopes": [],
-        "absolute": [],
+        "envelopes": [_envelope(one) for one in solution.along.envelopes],
+        "absolute": [_absolute(one) for one in solution.along.absolutes],
         "combinations": [],
         "checks": [],
         "agreement": _agreement(solution),
@@ -127,60 +130,134 @@ def _placement(placement: Placement) -> Json:
     return {
         "moving": placement.load.name,
         "effect": effect_entry(placement.effect),
-        "max": _extreme(placement, placement.greatest, placement.swept[0]),
-        "min": _extreme(placement, placement.least, placement.swept[1]),
+        "max": _extreme(placement.greatest, placement.swept[0]),
+        "min": _extreme(placement.least, placement.swept[1]),
     }
 
 
-def _extreme(placement: Placement, found: Governing, swept: float) -> Json:
-    load = placement.load
+def _extreme(found: Governing, swept: float) -> Json:
+    case = found.case
+    allowances = dict(case.allowances) if case else {}
     entry: Json = {
         "value": float(found.value),
         "static": float(found.static),
-        "allowance": float(load.allowance),
-        "distribution": float(load.distribution),
+        "case": case.name if case else "",
+        "allowance": float(allowances["axles"].value) if "axles" in allowances else 0.0,
+        "allowances": {part: float(one.value) for part, one in allowances.items()},
+        "factor": float(case.factor) if case else 1.0,
+        "distribution": float(found.share),
         "axles": [],
-        "loaded": [[float(start), float(end)] for start, end in found.loaded],
-        "candidates": found.candidates,
+        "concentrated": [_axle(share) for share in found.concentrated],
+        "trailing": [_strip(share) for share in found.strips if share.stretches],
+        "loaded": _stretches(found.loaded),
+        "candidates": found.looked_at,
         "swept": rounded(swept),
     }
-    if found.chosen is not None and found.rates is not None:
-        position = found.chosen.position
+    if found.position is not None and found.rates is not None:
+        groups = found.position.groups
         entry |= {
-            "heading": position.heading,
-            "lead_at": float(position.lead_at),
-            "side": position.side,
-            "ends_count": position.ends_count,
+            "heading": found.position.heading,
+            "lead_at": float(found.position.lead_at),
+            "side": groups[0].side,
+            "ends_count": groups[0].ends_count,
             "axles": [
-                {
-                    "weight": float(share.weight),
-                    "at": float(share.at),
-                    "ordinate": float(share.ordinate),
-                    "standing": share.standing,
-                }
-                for share in found.shares
+                {**_axle(share), "side": found.position.group_of(share.axle).side}
+                for share in found.axles
             ],
             "rate_before": float(found.rates[0]),
             "rate_after": float(found.rates[1]),
-            "ties": [_where(one) for one in found.ties],
+            "ties": [_tie(one) for one in found.ties],
         }
         if found.near:
-            entry["next"] = _candidate(placement, found, found.near[0])
+            entry["next"] = {"value": float(found.near[0].value), **_where(found.near[0])}
     return entry
 
 
-def candidate_value(placement: Placement, found: Governing, candidate: Candidate) -> Fraction:
-    """The value that counts if the axles stood there: with uniform load and factors."""
-    return total_effect(placement.load, candidate.axles_effect, found.uniform)
+def _axle(share: AxleShare) -> Json:
+    return {
+        "weight": float(share.weight),
+        "at": float(share.at),
+        "ordinate": float(share.ordinate),
+        "standing": share.standing,
+    }
 
 
-def _candidate(placement: Placement, found: Governing, candidate: Candidate) -> Json:
-    value = candidate_value(placement, found, candidate)
-    return {"value": float(value), **_where(candidate.position)}
+def _strip(share: StripShare) -> Json:
+    return {
+        "load": float(share.strip.intensity),
+        "stretches": _stretches(share.stretches),
+        "area": float(share.area),
+    }
 
 
-def _where(position: Position) -> Json:
-    return {"heading": position.heading, "lead_at": float(position.lead_at)}
+def _stretches(stretches: Sequence[Stretch]) -> list[list[float]]:
+    return [[float(start), float(end)] for start, end in stretches]
+
+
+def _tie(tie: Tie) -> Json:
+    return {**_where(tie.first), "lead_to": float(tie.last.position.lead_at)}
+
+
+def _where(candidate: Candidate) -> Json:
+    position = candidate.position
+    return {
+        "case": candidate.case.name,
+        "heading": position.heading,
+        "lead_at": float(position.lead_at),
+    }
+
+
+def _envelope(found: Envelope) -> Json:
+    """Point by point; ``where`` tells how the load stands, for the greatest and for the least."""
+    points = found.points
+    names = dict.fromkeys(name for point in points for name in point.together)
+    return {
+        "load": found.load.name,
+        "kind": found.kind,
+        "at": [float(point.effect.station) for point in points],
+        "side": [point.effect.face or "" for point in points],
+        "max": [float(point.greatest.value) for point in points],
+        "min": [float(point.least.value) for point in points],
+        "where": {
+            "max": [_stands(point.greatest) for point in points],
+            "min": [_stands(point.least) for point in points],
+        },
+        "with": {
+            name: {
+                extreme: [
+                    float(point.together[name][index]) if name in point.together else None
+                    for point in points
+                ]
+                for index, extreme in enumerate(("max", "min"))
+            }
+            for name in names
+        },
+    }
+
+
+def _stands(found: Governing) -> Json:
+    if found.case is None:
+        return {}
+    entry: Json = {"case": found.case.name}
+    if found.position is not None:
+        entry |= {
+            "heading": found.position.heading,
+            "axles": [float(at) for at in found.position.stations],
+        }
+    return entry
+
+
+def _absolute(one: Absolute) -> Json:
+    return {
+        "load": one.load.name,
+        "span": one.span,
+        "kind": "moment",
+        "at": float(one.section),
+        "value": float(one.found.value),
+        "static": float(one.found.static),
+        "where": _stands(one.found),
+        "axles": [_axle(share) for share in one.found.axles],
+    }
 
 
 def rounded(value: float) -> float:
@@ -203,7 +280,9 @@ def _steps(solution: Solution) -> list[Json]:
     for step in derivation.steps:
         entry: Json = {"key": step.key, "id": step.id, "symbols": step.symbols}
         if step.value is not None:
-            entry |= {"numbers": derivation.numbers(step), "result": derivation.result(step)}
+            if step.key not in solution.shortened:
+                entry["numbers"] = derivation.numbers(step)
+            entry["result"] = derivation.result(step)
         entry |= {
             "unit": units[step.kind],
             "inputs": list(step.inputs),

@@ -1,46 +1,51 @@
-"""From the calculation to everything found: classification, plan, lines, placements, steps."""
+"""From the calculation to everything found: lines, placements, envelopes, steps."""
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import cached_property
 
+from calcpack.analysis import ELASTIC, Line, analyse
 from calcpack.derive.area_steps import area_group
 from calcpack.derive.book import Book
-from calcpack.derive.checks import SecondMethods, compare_lines, conversion_of, swept_value
+from calcpack.derive.checks import SecondMethods, conversion_of, swept_value
 from calcpack.derive.curvature_steps import curvature_group
 from calcpack.derive.deflection_steps import deflection_group
 from calcpack.derive.force_steps import write_force_method
 from calcpack.derive.influence_steps import line_group
-from calcpack.derive.placement_steps import placement_group, train_group
+from calcpack.derive.kinds import DECIMALS, EFFECT_KIND
+from calcpack.derive.load_steps import load_group
+from calcpack.derive.placement_steps import placement_group
 from calcpack.derive.settlement_steps import settlement_group
 from calcpack.derive.shape import Shape
-from calcpack.derive.steps import AreaGroup, Derivation
-from calcpack.elastic.compatibility import ForceMethod, deflection_line, force_method, settled
-from calcpack.elastic.redundants import redundants_by_rule
-from calcpack.elastic.released import release
-from calcpack.errors import InputRefused, Problem
+from calcpack.derive.steps import AreaGroup, DeflectionGroup, Derivation, LineGroup, PlacementGroup
+from calcpack.elastic.compatibility import ForceMethod, settled
+from calcpack.envelopes import Along, along_beam, count_of_reports, target_of
+from calcpack.exact.numbers import printed
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import MovingLoad, Permanent
-from calcpack.model.request import Calculation, Effect
+from calcpack.model.request import Calculation, Detail, Effect
 from calcpack.moving.critical import Governing, governing
-from calcpack.statics.influence import Cut, effect_line, unknown_lines, value_of
-from calcpack.statics.plan import PlanStep, plan_of_solution
-from calcpack.statics.stability import Classification, classify, is_stable
-from calcpack.statics.system import System, cut_into_bodies
+from calcpack.moving.kernels import LineSet
+from calcpack.moving.placement import Sense
+from calcpack.statics.influence import value_of
+from calcpack.statics.plan import PlanStep
+from calcpack.statics.stability import Classification
+from calcpack.statics.system import System
 
-ELASTIC = ("deflection", "rotation")
-"""Effects that need the stiffness itself, also on a determinate beam."""
+SENSES: tuple[Sense, ...] = (1, -1)
+MOST_ROWS = 200
+"""Of a line with more rows the numbers are not printed."""
+SWEEP, COARSE_SWEEP = 2000, 400
+"""Steps of the sweep for an effect that is derived in full, and for one that is only tabulated."""
+Report = Callable[[int, int, str], None]
+"""Called with how many parts of the search are done, how many there are, and the one at hand."""
 
 
-@dataclass(frozen=True)
-class Line:
-    """The influence line of an effect; ``cut`` is None where the effect is an unknown itself."""
-
-    effect: Effect
-    line: Piecewise
-    cut: Cut | None
+def unheard(done: int, parts: int, what: str) -> None:
+    """A report that nobody listens to."""
 
 
 @dataclass(frozen=True)
@@ -76,84 +81,108 @@ class Solution:
     lines: tuple[Line, ...]
     placements: tuple[Placement, ...]
     settled: tuple[Settled, ...]
+    along: Along
     second: SecondMethods
     derivation: Derivation
 
+    @cached_property
+    def proofs(self) -> Mapping[tuple[str, Effect, Sense], PlacementGroup]:
+        """The derivation of each governing value that has one, by load, effect and sense."""
+        return {
+            (group.load.path, group.effect, group.governing.sense): group
+            for group in self.derivation.groups
+            if isinstance(group, PlacementGroup)
+        }
 
-def solve(calculation: Calculation) -> Solution:
+    def detail_of(self, group: LineGroup | DeflectionGroup) -> Detail:
+        """How much of a line is printed: as asked for, but of a long table not every number."""
+        asked = self.calculation.detail_of(group.quantity)
+        return "plan" if asked == "every equation" and len(group.rows) > MOST_ROWS else asked
+
+    @cached_property
+    def shortened(self) -> frozenset[str]:
+        """The keys of the steps that are printed without their numbers."""
+        return frozenset(
+            row.step.key
+            for group in self.derivation.groups
+            if isinstance(group, LineGroup | DeflectionGroup)
+            and self.detail_of(group) != "every equation"
+            for row in group.rows
+        )
+
+    def extremes(self) -> Iterator[tuple[Placement, Governing, str]]:
+        """Every governing value by load and effect, and the digits with which it is printed."""
+        for placement in self.placements:
+            for found in (placement.greatest, placement.least):
+                group = self.proofs.get((placement.load.path, placement.effect, found.sense))
+                if group is not None:
+                    yield placement, found, self.derivation.result(group.steps[-1])
+                else:
+                    decimals = DECIMALS[EFFECT_KIND[placement.effect.kind]]
+                    yield placement, found, printed(found.value, decimals)
+
+
+def solve(calculation: Calculation, report: Report = unheard) -> Solution:
     """Compute a calculation.
+
+    Args:
+        calculation: what the engineer states.
+        report: told of each part of the search before it begins.
 
     Raises:
         InputRefused: the beam is unstable, or the redundants stated do not suit it.
         Disagreement: a second method differs.
     """
     beam = calculation.beam
-    classification = classify(beam, cut_into_bodies(beam))
-    system = cut_into_bodies(beam, choose_redundants(calculation, classification))
-    plan = plan_of_solution(beam, system)
-    acted_on = [one.station for one in calculation.effects if one.kind in ELASTIC]
-    elastic = system.redundants or acted_on or calculation.permanent
-    method = force_method(release(beam, system, plan, acted_on)) if elastic else None
-    unknowns = unknown_lines(beam, plan, method.lines if method else None)
-    lines = tuple(
-        _line(calculation, system, method, unknowns, effect) for effect in calculation.effects
+    found = analyse(
+        beam,
+        calculation.units,
+        calculation.effects,
+        calculation.redundants,
+        bool(calculation.permanent),
     )
-    every_line = {**unknowns, **{line.effect: line.line for line in lines}}
-    second = compare_lines(beam, calculation.units, every_line)
-    placements = tuple(
-        _placement(load, line, second) for load in calculation.moving for line in lines
-    )
+    progress = _Progress(calculation, report)
+    placements = tuple(_placements(calculation, found.lines, found.second, progress))
+    along = along_beam(calculation, progress)
     settled_cases = tuple(
-        _settled(calculation, system, method, case) for case in calculation.permanent
+        _settled(calculation, found.system, found.method, case) for case in calculation.permanent
     )
-    derivation = derive(Book(calculation), plan, method, unknowns, lines, placements, settled_cases)
-    return Solution(
-        calculation,
-        system,
-        classification,
-        plan,
-        method,
-        unknowns,
-        lines,
+    derivation = derive(
+        Book(calculation),
+        found.plan,
+        found.method,
+        found.unknowns,
+        found.lines,
         placements,
         settled_cases,
-        second,
+    )
+    return Solution(
+        calculation,
+        found.system,
+        found.classification,
+        found.plan,
+        found.method,
+        found.unknowns,
+        found.lines,
+        placements,
+        settled_cases,
+        along,
+        found.second,
         derivation,
     )
 
 
-def choose_redundants(
-    calculation: Calculation, classification: Classification
-) -> tuple[Effect, ...]:
-    """The redundants that the engineer stated, else those by rule.
+class _Progress:
+    """Counts the parts of the search."""
 
-    Raises:
-        InputRefused: those stated are not as many as the degree, or leave a mechanism.
-    """
-    beam, degree, stated = calculation.beam, classification.degree, calculation.redundants
-    if stated is None:
-        return redundants_by_rule(beam, degree)
-    said = ", ".join(one.label for one in stated) or "none"
-    if len(stated) != degree:
-        needs = f"must be {degree}, the degree to which the beam is indeterminate"
-        raise InputRefused([Problem("beam.redundants", said, needs)])
-    if not is_stable(cut_into_bodies(beam, stated)):
-        needs = "must leave a stable beam when they are released"
-        raise InputRefused([Problem("beam.redundants", said, needs)])
-    return stated
+    def __init__(self, calculation: Calculation, report: Report) -> None:
+        effects = len(calculation.moving) * len(calculation.effects)
+        self.parts = effects + count_of_reports(calculation)
+        self.done, self.report = 0, report
 
-
-def _line(
-    calculation: Calculation,
-    system: System,
-    method: ForceMethod | None,
-    unknowns: Mapping[Effect, Piecewise],
-    effect: Effect,
-) -> Line:
-    if effect.kind in ELASTIC and method is not None:
-        line = deflection_line(method, effect) * conversion_of(calculation.units, effect)
-        return Line(effect, line, None)
-    return Line(effect, *effect_line(calculation.beam, system, unknowns, effect))
+    def __call__(self, what: str) -> None:
+        self.report(self.done, self.parts, what)
+        self.done += 1
 
 
 def _settled(
@@ -173,13 +202,22 @@ def _settled(
     return Settled(case, unknowns, values)
 
 
-def _placement(load: MovingLoad, line: Line, second: SecondMethods) -> Placement:
-    greatest, least = governing(line.line, load, 1), governing(line.line, load, -1)
-    swept = (
-        swept_value(second, line.effect, load, greatest),
-        swept_value(second, line.effect, load, least),
-    )
-    return Placement(load, line.effect, greatest, least, swept)
+def _placements(
+    calculation: Calculation, lines: Sequence[Line], second: SecondMethods, progress: _Progress
+) -> Iterator[Placement]:
+    """Every load on every line, each compared with a sweep."""
+    if not lines:
+        return
+    targets = [target_of(calculation.beam, one.effect, one.line) for one in lines]
+    base = LineSet([target.line for target in targets])
+    for load in calculation.moving:
+        found = [governing(targets, load, sense, base) for sense in SENSES]
+        for line, target, greatest, least in zip(lines, targets, *found, strict=True):
+            progress(f"{load.name}: {line.effect.label}")
+            steps = SWEEP if calculation.detail_of(line.effect) != "table" else COARSE_SWEEP
+            ordinates = second.stiffness[line.effect]
+            swept = [swept_value(ordinates, target, load, one, steps) for one in (greatest, least)]
+            yield Placement(load, line.effect, greatest, least, (swept[0], swept[1]))
 
 
 def derive(
@@ -197,7 +235,8 @@ def derive(
         line_group(book, step.unknown, step, unknowns[step.unknown])
     shapes: dict[Effect, Shape] = {}
     areas: dict[Effect, AreaGroup] = {}
-    for line in lines:
+    in_full = [line for line in lines if book.calculation.detail_of(line.effect) != "table"]
+    for line in in_full:
         if line.cut is not None:
             line_group(book, line.effect, line.cut, line.line)
         if elastic is not None and line.effect.kind in ELASTIC:
@@ -213,9 +252,12 @@ def derive(
         down = conversion_of(book.calculation.units, Effect("deflection", "", Fraction(0)))
         for one in settled_cases:
             settlement_group(elastic, one.case, down, one.unknowns, one.effects)
-    trains = {load.path: train_group(book, load) for load in book.calculation.moving}
+    by_effect = {line.effect: line.line for line in in_full}
+    loads = {load.path: load_group(book, load) for load in book.calculation.moving}
     for found in placements:
-        for extreme in (found.greatest, found.least):
-            train, shape = trains[found.load.path], shapes[found.effect]
-            placement_group(book, train, areas[found.effect], shape, extreme)
+        if found.effect in by_effect:
+            for extreme in (found.greatest, found.least):
+                effect = found.effect
+                load, line_ = loads[found.load.path], by_effect[effect]
+                placement_group(book, load, areas[effect], shapes[effect], line_, extreme)
     return book.close()

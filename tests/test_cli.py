@@ -217,6 +217,39 @@ def test_a_new_folder_can_be_solved(like: str | None, tmp_path: Path) -> None:
     assert main(["solve", str(folder / "calc.toml")]) == 0
 
 
+def test_a_new_folder_brings_the_tables_that_its_example_names(tmp_path: Path) -> None:
+    folder = tmp_path / "new"
+    assert main(["new", str(folder), "--like", "permit_crossing"]) == 0
+    assert sorted(path.name for path in folder.iterdir()) == [
+        "calc.toml",
+        "calculation.ipynb",
+        "permit.csv",
+    ]
+
+
+@pytest.mark.parametrize("command", ["solve", "issue"])
+def test_stopping_a_search_leaves_nothing_behind(
+    command: str,
+    tmp_path: Path,
+    monkeypatch: pytest.MonkeyPatch,
+    capsys: pytest.CaptureFixture[str],
+) -> None:
+    """As Ctrl-C does, in the middle of the search."""
+    (tmp_path / "calc.toml").write_text(GOOD)
+    (tmp_path / "package.pdf").write_bytes(b"older")
+
+    def stop(bar: object, done: int, parts: int, what: str) -> None:
+        if done == 2:
+            raise KeyboardInterrupt
+
+    monkeypatch.setattr("calcpack.cli._Bar.search", stop)
+    path = tmp_path if command == "issue" else tmp_path / "calc.toml"
+    assert main([command, str(path)]) == 130
+    assert capsys.readouterr() == ("", "calcpack: stopped; nothing was written\n")
+    assert sorted(one.name for one in tmp_path.iterdir()) == ["calc.toml", "package.pdf"]
+    assert (tmp_path / "package.pdf").read_bytes() == b"older"
+
+
 def test_new_overwrites_nothing(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
     (tmp_path / "calc.toml").write_text("mine")
     assert main(["new", str(tmp_path), "--like", "nothing"]) == 2

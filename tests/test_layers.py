@@ -26,6 +26,8 @@ RANKS = {
             ("moving",),
             ("second",),
             ("derive",),
+            ("analysis",),
+            ("envelopes",),
             ("intake", "solution"),
             ("results",),
             ("sheets",),

@@ -18,7 +18,8 @@ from typing import Any
 import pytest
 import rfc8785
 from beams import effects_of, make_beam
-from making import COVER, make_calculation, make_load
+from loads import given, make_load, make_strip
+from making import COVER, make_calculation
 
 from calcpack.model.request import Calculation, Cover, Signature
 from calcpack.results import as_bytes, results, rounded
@@ -61,7 +62,7 @@ def test_every_top_level_key_is_present_and_plain() -> None:
     assert read == found()
     assert found()["format"] == 1
     assert found()["classification"]["kind"] == "determinate"
-    for later in ("envelopes", "absolute", "combinations", "checks"):
+    for later in ("combinations", "checks"):
         assert found()[later] == []
 
 
@@ -133,6 +134,96 @@ def test_a_value_from_its_printed_parts() -> None:
                 assert abs(extreme["next"]["value"]) < abs(extreme["value"])
                 assert {*extreme["next"]} >= {"heading", "lead_at"}
         assert placement["max"]["value"] >= 0 >= placement["min"]["value"]
+
+
+def many_parts() -> Calculation:
+    """Two cases of a train with a gap that varies and a strip behind it, the second with a force
+    that floats and a factor; a uniform load in both."""
+    beam = make_beam(31, [(0, "pin"), (14, "roller"), (26, "roller")], sections=[6])
+    load = make_load((12, 0), (30, (4, 9)), (30, 4), uniform=2, strips=[make_strip(3, 2, length=8)])
+    (first,) = load.cases
+    first = replace(
+        first,
+        name="first",
+        allowances=(
+            ("axles", given("0.3", "moving[0].a")),
+            ("trailing", given("0.1", "moving[0].t")),
+        ),
+    )
+    second = replace(
+        first,
+        name="second",
+        concentrated=(given(5, "moving[0].force"),),
+        factors=(given("0.9", "moving[0].k[0]"), given("1.05", "moving[0].k[1]")),
+        allowances=(*first.allowances, ("uniform", given("0.02", "moving[0].u"))),
+    )
+    load = replace(load, cases=(first, second))
+    return make_calculation(beam, effects_of(beam), [load], "SI")
+
+
+def test_a_value_from_the_printed_parts_of_a_case() -> None:
+    """Part by part: axles and floating forces, strips, and what is left of the static effect."""
+    seen: set[str] = set()
+    for placement in results(solve(many_parts()))["placements"]:
+        for extreme in (placement["max"], placement["min"]):
+            counted = [one for one in extreme["axles"] if one["standing"] == "counts"]
+            forces = [*counted, *extreme["concentrated"]]
+            axles = sum(one["weight"] * one["ordinate"] for one in forces)
+            trailing = sum(one["load"] * one["area"] for one in extreme["trailing"])
+            uniform = extreme["static"] - axles - trailing
+            raised = {part: 1 + value for part, value in extreme["allowances"].items()}
+            value = axles * raised.get("axles", 1) + trailing * raised.get("trailing", 1)
+            value += uniform * raised.get("uniform", 1)
+            value *= extreme["factor"] * extreme["distribution"]
+            assert extreme["value"] == pytest.approx(value, abs=1e-9)
+            assert extreme["swept"] == pytest.approx(value, rel=3e-2, abs=1e-6)
+            if extreme["case"] == "second":
+                assert extreme["factor"] == pytest.approx(0.9 * 1.05)
+            length = sum(end - start for start, end in extreme["loaded"])
+            assert (length > 0) == (abs(uniform) > 1e-9)
+            for strip in extreme["trailing"]:
+                assert strip["load"] == 3
+                assert 0 < sum(end - start for start, end in strip["stretches"]) < 8 + 1e-9
+            for tie in extreme.get("ties", ()):
+                assert {*tie} == {"case", "heading", "lead_at", "lead_to"}
+                assert tie["lead_at"] <= tie["lead_to"]
+            if "next" in extreme:
+                assert abs(extreme["next"]["value"]) < abs(extreme["value"])
+            seen |= {extreme["case"]}
+            seen |= {part for part in ("concentrated", "trailing", "ties") if extreme.get(part)}
+    assert seen >= {"first", "second", "concentrated", "trailing", "ties"}
+
+
+def test_what_is_found_along_the_beam() -> None:
+    """At a section the envelope has the value that was derived there; the greatest
+    moment of a span is at least that of the envelope at any place in it."""
+    body = found()
+    kinds = {(one["load"], one["kind"]): one for one in body["envelopes"]}
+    compared = 0
+    for placement in body["placements"]:
+        effect, one = (
+            placement["effect"],
+            kinds.get((placement["moving"], placement["effect"]["kind"])),
+        )
+        if one is None:
+            continue
+        assert {*one} == {"load", "kind", "at", "side", "max", "min", "where", "with"}
+        for index, (at, side) in enumerate(zip(one["at"], one["side"], strict=True)):
+            if (at, side) == (effect["station"], effect.get("side", "")):
+                assert one["max"][index] == pytest.approx(placement["max"]["value"])
+                assert one["min"][index] == pytest.approx(placement["min"]["value"])
+                compared += 1
+    assert compared > 8
+    assert body["absolute"]
+    for one in body["absolute"]:
+        assert {*one} == {"load", "span", "kind", "at", "value", "static", "where", "axles"}
+        start, end = [(0, 40), (40, 88), (88, 128)][one["span"] - 1]
+        along = kinds[one["load"], "moment"]
+        inside = [
+            value for at, value in zip(along["at"], along["max"], strict=True) if start <= at <= end
+        ]
+        assert one["value"] >= max(inside) - 1e-9
+        assert start < one["at"] < end
 
 
 def test_units_of_lines_and_steps() -> None:

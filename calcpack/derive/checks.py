@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from bisect import bisect_left, bisect_right
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from typing import Literal
+
+import numpy as np
 
 from calcpack.errors import Disagreement
 from calcpack.exact.piecewise import Piecewise, Side
@@ -13,10 +16,10 @@ from calcpack.exact.units import SYSTEMS, parse_unit
 from calcpack.model.beam import Beam
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Governing
+from calcpack.moving.critical import Governing, Target, applies
 from calcpack.second.kinematic import influence_line
-from calcpack.second.stiffness import Ordinates, ordinates
-from calcpack.second.sweep import swept
+from calcpack.second.stiffness import Floats, Ordinates, ordinates
+from calcpack.second.sweep import swept_case
 
 SIDES: tuple[Side, ...] = ("left", "right")
 WITHIN = 1e-9
@@ -80,18 +83,19 @@ def compare_lines(beam: Beam, units: str, lines: Mapping[Effect, Piecewise]) -> 
 
 def _compare_stiffness(beam: Beam, effect: Effect, line: Piecewise, found: Ordinates) -> None:
     stops = [station.at for station in beam.stations]
-    scale = max(abs(float(line.value(at, side))) for at in stops for side in SIDES)
+    run = float(beam.length)
+    ours = {side: _in_floats(line, stops, side) for side in SIDES}
+    scale = max(float(np.abs(values).max()) for values, _ in ours.values())
     scale += 1 if effect.kind not in ("deflection", "rotation") else 0
+    theirs = {
+        "left": (found.left, found.left_slopes),
+        "right": (found.right, found.right_slopes),
+    }
     worst = 0.0
-    for side, values, slopes in (
-        ("left", found.left, found.left_slopes),
-        ("right", found.right, found.right_slopes),
-    ):
-        for at, value, slope in zip(stops, values, slopes, strict=True):
-            face: Side = "left" if side == "left" else "right"
-            worst = max(worst, abs(float(line.value(at, face)) - value))
-            run = float(beam.length)
-            worst = max(worst, abs(float(line.slope(at, face)) - slope) * run)
+    for side, (values, slopes) in ours.items():
+        other, other_slopes = theirs[side]
+        worst = max(worst, float(np.abs(values - other).max()))
+        worst = max(worst, float(np.abs(slopes - other_slopes).max()) * run)
     if not worst <= WITHIN * scale:
         raise Disagreement(
             f"{effect.label}: the stiffness solution differs by {worst:.1e}, "
@@ -99,17 +103,52 @@ def _compare_stiffness(beam: Beam, effect: Effect, line: Piecewise, found: Ordin
         )
 
 
-def swept_value(second: SecondMethods, effect: Effect, load: MovingLoad, found: Governing) -> float:
+def _in_floats(line: Piecewise, stops: Sequence[Fraction], side: Side) -> tuple[Floats, Floats]:
+    """The line and its slope on one side of each stop; the pieces are chosen exactly."""
+    find = bisect_left if side == "left" else bisect_right
+    index = [min(max(find(line.breaks, at) - 1, 0), len(line.pieces) - 1) for at in stops]
+    powers = 1 + line.degree
+    pieces = np.zeros((len(line.pieces), powers))
+    for row, piece in zip(pieces, line.pieces, strict=True):
+        row[: len(piece)] = [float(value) for value in piece]
+    t = np.array([float(at - line.breaks[n]) for at, n in zip(stops, index, strict=True)])
+    own = pieces[index]
+    values, slopes = np.zeros(len(stops)), np.zeros(len(stops))
+    for power in reversed(range(powers)):
+        slopes = slopes * t + values
+        values = values * t + own[:, power]
+    return values, slopes
+
+
+def swept_value(
+    ordinates: Ordinates, target: Target, load: MovingLoad, found: Governing, steps: int
+) -> float:
     """The sweep's value, which must not exceed ours nor fall short by more than its step allows.
+
+    Args:
+        ordinates: of the effect, by the stiffness solution.
+        target: the effect, and what decides which cases are for it.
+        load: swept case by case.
+        found: what the search found.
+        steps: of the sweep, along the beam and the train.
 
     Raises:
         Disagreement: it does.
     """
-    value, shortfall = swept(second.stiffness[effect], load, found.sense)
-    ours, slack = float(found.value), ROUNDING * (1 + abs(float(found.value)))
-    excess = found.sense * (value - ours)
-    if not -shortfall - slack <= excess <= slack:
+    spans = [(float(start), float(end)) for start, end in target.spans]
+    value = possible = 0.0
+    for case in load.cases:
+        if applies(case, load, target, found.sense):
+            reached, short = swept_case(ordinates, case, found.sense, spans, steps)
+            value = max(value, found.sense * reached)
+            possible = max(possible, found.sense * reached + short)
+    share = float(found.share)
+    value, possible = value * share, possible * share
+    ours = found.sense * float(found.value)
+    slack = ROUNDING * (1 + ours)
+    if not value - slack <= ours <= possible + slack:
         raise Disagreement(
-            f"{load.name}, {effect.label}: a sweep finds {value:.6g}, the search {ours:.6g}"
+            f"{load.name}, {target.kind} at {float(target.at):g}: a sweep finds "
+            f"{found.sense * value:.6g}, the search {found.sense * ours:.6g}"
         )
-    return value
+    return found.sense * value

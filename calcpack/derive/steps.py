@@ -151,12 +151,13 @@ class AreaGroup:
 
 
 @dataclass(frozen=True)
-class TrainGroup:
-    """Distances of the axles behind the lead axle."""
+class LoadGroup:
+    """A moving load: ``steps`` find its numbers that go by a length, by path in ``found``."""
 
     number: int
     load: MovingLoad
     steps: tuple[Step, ...]
+    found: Mapping[str, Step]
 
 
 @dataclass(frozen=True)
@@ -197,7 +198,7 @@ Group = (
     | SettlementGroup
     | LineGroup
     | AreaGroup
-    | TrainGroup
+    | LoadGroup
     | PlacementGroup
 )
 

@@ -18,15 +18,22 @@ from calcpack.intake.calculation import file_bytes, read
 from calcpack.model.request import Calculation
 from calcpack.results import results
 from calcpack.sheets.pages import make_sheet
-from calcpack.solution import solve
+from calcpack.solution import Report as Search
+from calcpack.solution import solve, unheard
 
 Report = Callable[[str], None]
 """Is told in a word what is being done next."""
-PHASES = 4
 
 
-def issue(notebook: NotebookNode, folder: Path, report: Report = lambda phase: None) -> bytes:
+def issue(
+    notebook: NotebookNode,
+    folder: Path,
+    report: Report = lambda phase: None,
+    search: Search = unheard,
+) -> bytes:
     """The package of the calculation in ``folder`` as PDF, in the order of ``notebook``.
+
+    ``report`` is told what is done next, ``search`` of each part of the search within it.
 
     Sheets are made from calc.toml anew, never from what the notebook shows. A kernel is started
     only where the notebook holds code of the engineer's own. Neither folder nor notebook is
@@ -41,8 +48,8 @@ def issue(notebook: NotebookNode, folder: Path, report: Report = lambda phase: N
     parts, problems = parts_of(notebook)
     calc, calculation, day = _read(folder, problems)
     report("solving")
-    solution = solve(calculation)
-    found = results(solution)
+    solved = solve(calculation, search)
+    found = results(solved)
     _refuse(forged_outputs(notebook, parts, found["digest"]))
     shown = notebook
     if any(isinstance(part, OwnCell) and part.is_code for part in parts):
@@ -52,14 +59,14 @@ def issue(notebook: NotebookNode, folder: Path, report: Report = lambda phase: N
         _refuse(forged_outputs(shown, parts, found["digest"]))
     report("drawing")
     made = [
-        make_sheet(part.name, solution)
+        make_sheet(part.name, solved)
         if isinstance(part, SheetCall)
         else own_blocks(shown.cells[part.index], part.index)
         for part in parts
     ]
     report("typesetting")
     inside = attachments(calc, calculation.tables, found, notebook)
-    return to_pdf(made, solution, found["digest"], day, inside)
+    return to_pdf(made, solved, found["digest"], day, inside)
 
 
 def _read(folder: Path, problems: list[Problem]) -> tuple[bytes, Calculation, date]:

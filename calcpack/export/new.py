@@ -16,7 +16,7 @@ def new_folder(folder: Path, like: str | None, today: date) -> None:
 
     Args:
         folder: must not exist yet, or be empty.
-        like: the example whose calc.toml is taken; None: the bare template, dated today.
+        like: the example whose calc.toml and tables are taken; None: the template, dated today.
         today: the day on which the calculation is begun.
 
     Raises:
@@ -42,6 +42,8 @@ def new_folder(folder: Path, like: str | None, today: date) -> None:
             made = Path(beside) / folder.name
             made.mkdir()
             (made / "calc.toml").write_text(text, encoding="utf-8")
+            for table in example_folder(like).glob("*.csv") if like else ():
+                shutil.copyfile(table, made / table.name)
             shutil.copyfile(template_folder() / "calculation.ipynb", made / "calculation.ipynb")
             made.replace(folder)
     except OSError as error:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 
-from calcpack.derive.steps import PlacementGroup
+from calcpack.derive.kinds import EFFECT_KIND
 from calcpack.exact.numbers import printed
 from calcpack.exact.units import SYSTEMS
 from calcpack.moving.critical import Governing
@@ -21,25 +21,22 @@ def to_text(solution: Solution) -> str:
 
 
 def _rows(solution: Solution) -> Iterator[tuple[str, ...]]:
-    units, derivation = SYSTEMS[solution.calculation.units], solution.derivation
-    for group in derivation.groups:
-        if isinstance(group, PlacementGroup):
-            step = group.steps[-1]
-            yield (
-                group.effect.label,
-                group.load.name,
-                "max" if group.governing.sense > 0 else "min",
-                derivation.result(step),
-                units[step.kind],
-                *_place(group.governing, units["length"]),
-            )
+    units = SYSTEMS[solution.calculation.units]
+    for placement, found, digits in solution.extremes():
+        yield (
+            placement.effect.label,
+            placement.load.name,
+            "max" if found.sense > 0 else "min",
+            digits,
+            units[EFFECT_KIND[placement.effect.kind]],
+            *_place(found, units["length"]),
+        )
 
 
 def _place(found: Governing, length: str) -> tuple[str, str]:
-    if found.chosen is None:
-        return ("uniform load only" if found.uniform else "stays away", "")
-    position = found.chosen.position
-    return f"{printed(position.lead_at, 3)} {length}", position.heading
+    if found.position is None:
+        return ("stays away" if found.case is None else "no train", "")
+    return f"{printed(found.position.lead_at, 3)} {length}", found.position.heading
 
 
 def _table(rows: Sequence[tuple[str, ...]]) -> Iterator[str]:

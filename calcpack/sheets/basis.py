@@ -4,19 +4,17 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from calcpack.exact.numbers import decimals_to_end
 from calcpack.exact.units import SYSTEMS
-from calcpack.model.loads import MovingLoad
 from calcpack.sheets.blocks import (
     Block,
     Column,
     Figure,
     Heading,
+    Items,
     Paragraph,
     Table,
-    Text,
-    Value,
 )
+from calcpack.sheets.load_tables import share_words, standard_words
 from calcpack.sheets.signs_figure import signs_figure
 from calcpack.solution import Solution
 
@@ -49,9 +47,17 @@ METHODS = (
     ),
     (
         "Placement of loads",
-        "the effect of a train is one polynomial between events, where an axle meets a breakpoint "
-        "of the line or an end of the beam; events are evaluated on both sides, and for curved "
-        "lines the places between them where the rate of change is zero",
+        "the effect of a train is one polynomial between events, where an axle or the end of a "
+        "trailing load meets a breakpoint of the line or an end of the beam; events are evaluated "
+        "on both sides, and for curved lines the places between them where the rate of change is "
+        "zero; axles with gaps that vary are held at an end of a range or stand by themselves "
+        "where their own effect is greatest, each place with the best that may follow it; uniform "
+        "load stands on the parts of the line of one sign",
+    ),
+    (
+        "Absolute maximum moment",
+        "section and place together: the line of any section of a span follows from those of the "
+        "moments at its ends and the simple beam",
     ),
     ("Kinematic statement", "Müller-Breslau's principle, in exact fractions"),
     ("Stiffness solution", "displacement method with Euler-Bernoulli elements, in floating point"),
@@ -60,6 +66,10 @@ METHODS = (
         "computed in exact fractions of the decimals typed; rounded half away from zero in print, "
         "with as many decimals as each equation needs to close within one unit of its last digit",
     ),
+)
+STATED = (
+    "That these loads, their allowances and their distribution are the right ones is the "
+    "preparer's statement; the governing standard in its edition in force decides."
 )
 LINES_HOLD = (
     "Influence lines hold only while every bearing stays down or is anchored. Bending alone is "
@@ -99,40 +109,28 @@ def _loads(solution: Solution) -> Iterator[Block]:
     if not moving:
         yield Paragraph(("No travelling load is stated; only influence lines are given.",))
         return
+    names = {one.at: one.name for one in solution.calculation.beam.stations if one.name}
     columns = (
-        Column("load", width=3),
-        Column("source", width=3),
-        Column("axles", "right"),
-        Column("uniform", "right"),
-        Column("allowance", "right"),
-        Column("distribution", "right"),
-        Column("relieving axles", width=2),
+        Column("load", width=2),
+        Column("source", width=6),
+        Column("cases", "right"),
+        Column("distribution", width=4),
     )
-    rows = tuple(_load(solution.calculation.units, load) for load in moving)
-    yield Table(columns, rows)
-    yield Paragraph(
+    rows = tuple(
         (
-            "Dynamic allowance is taken on axles only. No standard is named by these loads: that "
-            "they, their allowance and their distribution are the right ones is the preparer's "
-            "statement, not compared with any standard by the program.",
+            (load.name,),
+            (standard_words(load) if load.standard else "stated by the preparer",),
+            (str(len(load.cases)),),
+            (share_words(load, names),),
         )
+        for load in moving
     )
-
-
-def _load(units: str, load: MovingLoad) -> tuple[Text, ...]:
-    relieving = "count" if load.relieving == "count" else "neglected one by one"
-    uniform = decimals_to_end(load.uniform, 6) if load.uniform else None
-    return (
-        (load.name,),
-        ("stated by the preparer",),
-        (str(len(load.axles)) if load.axles else "—",),
-        (Value(load.uniform, uniform or 2, SYSTEMS[units]["line load"]),)
-        if load.uniform
-        else ("—",),
-        (Value(load.allowance, decimals_to_end(load.allowance, 6) or 2),),
-        (Value(load.distribution, decimals_to_end(load.distribution, 6) or 2),),
-        (relieving,),
-    )
+    yield Table(columns, rows)
+    yield Paragraph((STATED,))
+    notes = dict.fromkeys(note for load in moving if load.standard for note in load.standard.notes)
+    if notes:
+        yield Paragraph(("Left to the engineer by these models:",), leads=True)
+        yield Items(tuple((Paragraph((note,)),) for note in notes))
 
 
 def _assumptions(solution: Solution) -> Iterator[Block]:

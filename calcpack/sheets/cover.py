@@ -17,7 +17,8 @@ from calcpack.solution import Solution
 COVERS = (
     "This package finds, for one straight beam, the influence lines of the "
     "effects asked for, where the travelling loads have to stand, and what they then cause; every "
-    "equation is printed with its numbers."
+    "equation is printed with its numbers, but for effects that are asked for in tables only and "
+    "for the envelopes."
 )
 NOT_COVERED = (
     "Not covered: permanent loads but settlements, combinations and resistances; section capacity, "

@@ -84,7 +84,11 @@ def lobes(line: Piecewise) -> tuple[Lobe, ...]:
 def drop_of(line: Piecewise) -> Callable[[Fraction], float]:
     """How far below the axis a value is drawn, in mm: positive values stand above it."""
     values = [value for _, *both in samples(line) for value in both]
-    most, least = max(*values, Fraction(0)), min(*values, Fraction(0))
+    return drop_between(max(*values, Fraction(0)), min(*values, Fraction(0)))
+
+
+def drop_between(most: Fraction, least: Fraction) -> Callable[[Fraction], float]:
+    """As ``drop_of``, of values between ``least`` <= 0 and ``most`` >= 0."""
     if most == least:
         return lambda value: 0.0
     unit = min(TALLEST / float(max(most, -least)), WHOLE / float(most - least))

@@ -32,6 +32,7 @@ from calcpack.sheets.blocks import (
     Text,
     Value,
 )
+from calcpack.sheets.bulk import line_tables
 from calcpack.sheets.elastic import group_blocks
 from calcpack.sheets.figures import line_figure
 from calcpack.sheets.free_body import free_body_figure, free_body_of
@@ -47,8 +48,6 @@ SPANS_ACROSS = 6
 """Spans beside each other in a table of tenth points."""
 DRAWN_DECIMALS = 6
 """Most decimals of an ordinate in a figure."""
-MOST_ROWS = 200
-"""A longer table of ordinates is printed without the numbers of each row."""
 
 
 def model_blocks(solution: Solution) -> tuple[Block, ...]:
@@ -99,7 +98,7 @@ def unknown_blocks(solution: Solution) -> tuple[Block, ...]:
     blocks: list[Block] = [Heading(1, ("Unknowns",))]
     for group in solution.derivation.groups:
         if isinstance(group, LineGroup) and isinstance(group.source, PlanStep):
-            blocks += _derived(solution, group, group.source.reason, detail_of(solution, group))
+            blocks += _derived(solution, group, group.source.reason, solution.detail_of(group))
     return tuple(blocks)
 
 
@@ -123,7 +122,7 @@ def line_blocks(solution: Solution) -> tuple[Block, ...]:
                 f"Cut at {group.quantity.at} and keep the part on the {group.source.keeps}, "
                 "where no more forces act than on the other; the unknowns are known by now."
             )
-            blocks += _derived(solution, group, reason, detail_of(solution, group))
+            blocks += _derived(solution, group, reason, solution.detail_of(group))
         elif isinstance(group, StepGroup):
             blocks += group_blocks(solution, group)
         elif isinstance(group, DeflectionGroup):
@@ -131,7 +130,7 @@ def line_blocks(solution: Solution) -> tuple[Block, ...]:
         elif isinstance(group, AreaGroup):
             steps = rows.get(group.effect) or _redundant_rows(solution, group.effect)
             blocks += _drawn(solution, group, steps)
-    return tuple(blocks)
+    return (*blocks, *line_tables(solution))
 
 
 def _redundant_rows(solution: Solution, effect: Effect) -> tuple[Step, ...]:
@@ -142,7 +141,7 @@ def _redundant_rows(solution: Solution, effect: Effect) -> tuple[Step, ...]:
 def _deflection(solution: Solution, group: DeflectionGroup) -> Iterator[Block]:
     yield Heading(2, (effect_title(group.quantity), ": ", symbol_of(group.quantity)), group.number)
     yield Equation(group.statement, group.statement.condition)
-    yield ordinate_table(solution, group.quantity, group.rows, detail_of(solution, group))
+    yield ordinate_table(solution, group.quantity, group.rows, solution.detail_of(group))
 
 
 def _derived(solution: Solution, group: LineGroup, reason: str, detail: Detail) -> Iterator[Block]:
@@ -161,12 +160,6 @@ def _derived(solution: Solution, group: LineGroup, reason: str, detail: Detail) 
         yield Paragraph(with_symbols(solution, reason), leads=True)
         yield Beside(equations, Figure(free_body_figure(body, unit, BODY_WIDTH)))
     yield ordinate_table(solution, group.quantity, group.rows, detail)
-
-
-def detail_of(solution: Solution, group: LineGroup | DeflectionGroup) -> Detail:
-    """How much of a derivation is printed: as asked for, but of a long table not every number."""
-    asked = group.quantity.show or solution.calculation.package.detail
-    return "plan" if asked == "every equation" and len(group.rows) > MOST_ROWS else asked
 
 
 def ordinate_table(

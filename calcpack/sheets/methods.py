@@ -7,6 +7,7 @@ from fractions import Fraction
 from calcpack.derive.kinds import LINE_KIND
 from calcpack.exact.units import SYSTEMS
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Value
+from calcpack.sheets.bulk import tabulated
 from calcpack.sheets.figures import beam_figure
 from calcpack.sheets.tables import effect_title, with_symbols
 from calcpack.solution import Solution
@@ -91,8 +92,10 @@ def worksheet_blocks(solution: Solution) -> tuple[Block, ...]:
         station.name or place_name(calculation.beam, station.at)
         for station in calculation.beam.stations
     ]
-    for start in range(0, len(solution.lines), EFFECTS_ACROSS):
-        lines = solution.lines[start : start + EFFECTS_ACROSS]
+    table_only = {line.effect for line in tabulated(solution)}
+    wanted = [line for line in solution.lines if line.effect not in table_only]
+    for start in range(0, len(wanted), EFFECTS_ACROSS):
+        lines = wanted[start : start + EFFECTS_ACROSS]
         columns = [Column("load at", width=2)]
         for line in lines:
             unit = units[LINE_KIND[line.effect.kind]]

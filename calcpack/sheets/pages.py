@@ -10,6 +10,7 @@ from calcpack.sheets.blocks import Block, Sheet
 from calcpack.sheets.cover import contents_blocks, cover_blocks
 from calcpack.sheets.data import data_blocks
 from calcpack.sheets.elastic import permanent_blocks, redundant_blocks
+from calcpack.sheets.envelopes import envelope_blocks
 from calcpack.sheets.lines import line_blocks, model_blocks, unknown_blocks
 from calcpack.sheets.methods import method_blocks, worksheet_blocks
 from calcpack.sheets.placements import placement_blocks, summary_blocks
@@ -27,6 +28,7 @@ _MAKERS: dict[str, tuple[str, Callable[[Solution], tuple[Block, ...]]]] = {
     "lines": ("Influence lines", line_blocks),
     "permanent": ("Permanent loads", permanent_blocks),
     "placements": ("Placements", placement_blocks),
+    "envelopes": ("Envelopes", envelope_blocks),
     "methods": ("Second methods", method_blocks),
     "worksheet": ("Worksheet", worksheet_blocks),
     "appendix": ("Appendix", appendix_blocks),

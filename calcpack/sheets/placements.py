@@ -5,12 +5,15 @@ from __future__ import annotations
 from collections.abc import Iterator
 from fractions import Fraction
 
-from calcpack.derive.kinds import DECIMALS, LINE_KIND
-from calcpack.derive.steps import PlacementGroup, Step, TrainGroup
+from calcpack.derive.kinds import DECIMALS, EFFECT_KIND, LINE_KIND, QuantityKind
+from calcpack.derive.steps import LoadGroup, PlacementGroup
+from calcpack.exact.piecewise import Piecewise
 from calcpack.exact.units import SYSTEMS
+from calcpack.model.beam import Beam
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Candidate, Governing, total_effect
+from calcpack.moving.critical import Candidate, Governing
+from calcpack.moving.placement import Group, Position, joined
 from calcpack.sheets.blocks import (
     Block,
     Column,
@@ -22,14 +25,19 @@ from calcpack.sheets.blocks import (
     Text,
     Value,
 )
+from calcpack.sheets.bulk import placement_tables, tabulated
+from calcpack.sheets.drawing import Drawing
 from calcpack.sheets.figures import placement_figure
+from calcpack.sheets.load_tables import load_blocks
 from calcpack.sheets.summary_figure import summary_figure
-from calcpack.sheets.tables import effect_title, result_of, step_table
+from calcpack.sheets.tables import effect_title, step_table
 from calcpack.solution import Solution
 from calcpack.statics.system import symbol_of
 
 SEARCHED = 9
 """Decimals of a place found where the rate of change is zero."""
+MOST_TIES = 4
+"""More ties are counted, not listed."""
 EXTREMES = {1: "greatest", -1: "least"}
 
 
@@ -39,7 +47,7 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
     length = units["length"]
     columns = (
         Column("effect", width=4),
-        Column("load", width=2),
+        Column("load", width=3),
         Column(""),
         Column("value", "right"),
         Column("unit"),
@@ -49,23 +57,25 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
         Column("proof", "right"),
     )
     rows = []
-    for group in solution.derivation.groups:
-        if isinstance(group, PlacementGroup):
-            found, step = group.governing, group.steps[-1]
-            nearest = _value_of(group.load, found, found.near[0]) if found.near else None
-            result = result_of(solution, step)
-            rows.append(
-                (
-                    (effect_title(group.effect),),
-                    (group.load.name,),
-                    (EXTREMES[found.sense],),
-                    (result,),
-                    (units[step.kind],),
-                    *_lead(found),
-                    (Value(nearest, result.decimals),) if nearest is not None else ("",),
-                    (Reference(group.number, step.id),),
-                )
+    proofs = solution.proofs
+    for placement, found, digits in solution.extremes():
+        group = proofs.get((placement.load.path, placement.effect, found.sense))
+        if group is None:
+            continue
+        decimals = len(digits.partition(".")[2])
+        case = f": {found.case.name}" if found.case and found.case.name else ""
+        rows.append(
+            (
+                (effect_title(placement.effect),),
+                (f"{placement.load.name}{case}",),
+                (EXTREMES[found.sense],),
+                (Value(found.value, None if "/" in digits else decimals),),
+                (units[EFFECT_KIND[placement.effect.kind]],),
+                *_lead(found),
+                (Value(found.near[0].value, decimals),) if found.near else ("",),
+                (Reference(group.number, group.steps[-1].id),),
             )
+        )
     return (
         Heading(1, ("Summary of results",)),
         Paragraph(
@@ -75,29 +85,59 @@ def summary_blocks(solution: Solution) -> tuple[Block, ...]:
             )
         ),
         *_sketch(solution),
-        Table(columns, tuple(rows)),
+        *((Table(columns, tuple(rows)),) if rows else ()),
+        *_elsewhere(solution),
     )
+
+
+def _elsewhere(solution: Solution) -> Iterator[Block]:
+    """What is in tables, and the absolute maxima."""
+    count = len(tabulated(solution))
+    if count and solution.placements:
+        words = f"{count} further effects stand in tables with the placements."
+        yield Paragraph((words,))
+    units = SYSTEMS[solution.calculation.units]
+    rows = tuple(
+        (
+            (one.load.name,),
+            (str(one.span),),
+            (Value(one.section, DECIMALS["length"]),),
+            (Value(one.found.value, DECIMALS["moment"]),),
+        )
+        for one in solution.along.absolutes
+    )
+    if rows:
+        yield Paragraph(("Absolute maximum moment of each span:",), leads=True)
+        columns = (
+            Column("load", width=3),
+            Column("span", "right", 1),
+            Column("section at", "right", 2, units["length"]),
+            Column("moment", "right", 2, units["moment"]),
+        )
+        yield Table(columns, rows)
 
 
 def _sketch(solution: Solution) -> Iterator[Block]:
     """The beam with the greatest and least value of each effect over all loads."""
     units = SYSTEMS[solution.calculation.units]
-    extremes: dict[Effect, dict[int, Step]] = {}
-    for group in solution.derivation.groups:
-        if isinstance(group, PlacementGroup):
-            sense, step = group.governing.sense, group.steps[-1]
-            known = extremes.setdefault(group.effect, {}).setdefault(sense, step)
-            if sense * ((step.value or 0) - (known.value or 0)) > 0:
-                extremes[group.effect][sense] = step
+    extremes: dict[Effect, dict[int, tuple[Fraction, str]]] = {}
+    proofs = solution.proofs
+    for placement, found, digits in solution.extremes():
+        if (placement.load.path, placement.effect, found.sense) not in proofs:
+            continue
+        known = extremes.setdefault(placement.effect, {})
+        value, _ = known.get(found.sense, (Fraction(0), ""))
+        if found.sense not in known or found.sense * (found.value - value) > 0:
+            known[found.sense] = found.value, digits
     entries = [
         (
             effect.station,
             symbol_of(effect),
-            solution.derivation.result(found[1]),
-            solution.derivation.result(found[-1]),
-            units[found[1].kind],
+            both[1][1],
+            both[-1][1],
+            units[EFFECT_KIND[effect.kind]],
         )
-        for effect, found in extremes.items()
+        for effect, both in extremes.items()
     ]
     if entries:
         calculation = solution.calculation
@@ -111,29 +151,19 @@ def placement_blocks(solution: Solution) -> tuple[Block, ...]:
         return (*blocks, Paragraph(("No travelling load was stated.",)))
     swept = {(found.load.path, found.effect): found.swept for found in solution.placements}
     for group in solution.derivation.groups:
-        if isinstance(group, TrainGroup):
-            blocks += _train(solution, group)
+        if isinstance(group, LoadGroup):
+            blocks += load_blocks(solution, group)
         elif isinstance(group, PlacementGroup):
             pair = swept[group.load.path, group.effect]
             blocks += _placement(solution, group, pair[0 if group.governing.sense > 0 else 1])
-    return tuple(blocks)
+    return (*blocks, *placement_tables(solution))
 
 
 def _lead(found: Governing) -> tuple[Text, Text]:
-    if found.chosen is None:
-        return ("uniform only" if found.uniform else "stays away",), ("",)
-    position = found.chosen.position
+    if found.position is None:
+        return ("stays away" if found.case is None else "no train",), ("",)
+    position = found.position
     return (Value(position.lead_at, DECIMALS["length"]),), (position.heading,)
-
-
-def _train(solution: Solution, group: TrainGroup) -> Iterator[Block]:
-    load = group.load
-    yield Heading(2, ("Train: ", load.name), group.number)
-    if group.steps:
-        yield Paragraph(("Distance of each axle behind the lead axle.",))
-        yield step_table(solution, group.steps)
-    relieving = "count" if load.relieving == "count" else "are neglected one by one"
-    yield Paragraph((f"Axles that lessen the effect {relieving}.",))
 
 
 def _placement(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[Block]:
@@ -141,53 +171,68 @@ def _placement(solution: Solution, group: PlacementGroup, swept: float) -> Itera
     units = SYSTEMS[calculation.units]
     title = f"{effect_title(group.effect)}: {EXTREMES[found.sense]} under {group.load.name}"
     yield Heading(2, (title,), group.number)
-    if found.chosen is None and not found.uniform:
+    if found.case is None:
         yield Paragraph(("No position of the load works in this sense: it stays away.",))
     else:
         line = next(one.line for one in solution.lines if one.effect == group.effect)
         kind = LINE_KIND[group.effect.kind]
-        on_beam = [s for s in found.shares if s.standing == "counts"]
-        yield Figure(
-            placement_figure(
-                calculation.beam,
-                line,
-                [(share.at, share.weight, share.ordinate) for share in on_beam],
-                found.loaded,
-                f"{group.effect.kind} at {group.effect.at}",
-                units[kind],
-                DECIMALS[kind],
-                calculation.units,
-                found.chosen.position.heading if found.chosen else "right",
-            )
-        )
-        yield from _standing(found, units["length"])
+        what = f"{group.effect.kind} at {group.effect.at}"
+        yield Figure(placed_figure(calculation.beam, line, found, what, kind, calculation.units))
+        yield from _standing(group.load, found, units["length"])
     yield step_table(solution, group.steps)
     yield from _proof(solution, group, swept)
 
 
-def _standing(found: Governing, length: str) -> Iterator[Block]:
-    if found.chosen is None:
+def placed_figure(
+    beam: Beam, line: Piecewise, found: Governing, what: str, kind: QuantityKind, units: str
+) -> Drawing:
+    """The load where it governs, over the line of ``what``; ``kind`` is that of an ordinate."""
+    on_beam = [s for s in (*found.axles, *found.concentrated) if s.standing == "counts"]
+    strips = [stretch for share in found.strips for stretch in share.stretches]
+    return placement_figure(
+        beam,
+        line,
+        [(share.at, share.weight, share.ordinate) for share in on_beam],
+        joined(sorted((*strips, *found.loaded))),
+        what,
+        SYSTEMS[units][kind],
+        DECIMALS[kind],
+        units,
+        found.position.heading if found.position else "right",
+    )
+
+
+def _standing(load: MovingLoad, found: Governing, length: str) -> Iterator[Block]:
+    case = found.case
+    if case is not None and case.name and len(load.cases) > 1:
+        yield Paragraph((f"Governing case: {case.name}.",))
+    if case is None or found.position is None:
         return
-    position = found.chosen.position
-    words: Text
-    if found.chosen.breakpoint is None:
-        words = (
-            "The rate of change is zero with the lead axle at station ",
-            Value(position.lead_at, SEARCHED, length),
-            f" (to {SEARCHED} decimals), the train heading {position.heading}.",
-        )
-    else:
-        words = (
-            f"Axle {found.chosen.axle + 1} stands at station ",
-            Value(found.chosen.breakpoint, DECIMALS["length"], length),
-            f", the train heading {position.heading}; axles at a jump of the line stand just "
-            f"{position.side} of it.",
-        )
-    yield Paragraph(words)
-    for standing in ("off the beam", "neglected"):
-        axles = [str(n) for n, s in enumerate(found.shares, start=1) if s.standing == standing]
+    position = found.position
+    for group in position.groups:
+        yield Paragraph(tuple(_group_words(position, group, length)))
+    for standing in ("off the beam", "neglected", "does not act"):
+        axles = [str(s.axle + 1) for s in found.axles if s.standing == standing and s.weight]
         if axles:
             yield Paragraph((f"Axle {', '.join(axles)}: {standing}.",))
+
+
+def _group_words(position: Position, group: Group, length: str) -> Iterator[str | Value]:
+    """Where axles that are held together stand."""
+    first, last = group.first + 1, group.last + 1
+    axles = f"axle {first}" if first == last else f"axles {first} to {last}"
+    alone = len(position.groups) == 1
+    held = "" if alone or first == last else f", {axles} held together"
+    if group.mark is None:
+        yield f"The rate of change is zero with axle {first} at station "
+        yield Value(position.stations[group.first], SEARCHED, length)
+        yield f" (to {SEARCHED} decimals){held}, heading {position.heading}."
+        return
+    what = "A strip's end" if group.anchor is None else f"Axle {group.anchor + 1}"
+    yield f"{what} stands at station "
+    yield Value(group.mark, DECIMALS["length"], length)
+    yield f"{held}, heading {position.heading}; axles at a jump of the line stand just "
+    yield f"{group.side} of it."
 
 
 def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[Block]:
@@ -195,42 +240,76 @@ def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[
     step = group.steps[-1]
     unit = SYSTEMS[solution.calculation.units][step.kind]
     decimals = DECIMALS[step.kind]
-    words: list[str | Value] = [f"{found.candidates} positions were looked at. "]
+    words: list[str | Value] = []
+    if found.case is not None:
+        words += [
+            "Static effect, without allowance, factors and distribution: ",
+            Value(found.static, decimals, unit),
+            ". ",
+        ]
+    words.append(f"{found.looked_at} places were looked at. ")
     if found.rates is not None:
         words += [
-            "Change of the axles' static effect per unit of travel to the right: left of here ",
+            "Change of the static effect of axles and trailing loads per unit of travel to the "
+            "right: left of here ",
             Value(found.rates[0], decimals),
             ", right of here ",
             Value(found.rates[1], decimals),
             ". ",
         ]
-    if found.ties:
-        words.append(f"The same value is found at {_others(len(found.ties))}. ")
+    words += _ties(found, SYSTEMS[solution.calculation.units]["length"])
     sixth = f"{swept:.6g}".replace("-", "−") if swept else "0"
     words.append(f"A sweep in small steps over the stiffness ordinates finds {sixth} {unit}.")
     yield Paragraph(tuple(words))
     if found.near:
+        cases = len(group.load.cases) > 1
         columns = (
-            Column("near candidates"),
+            Column("near candidates", width=2),
+            *((Column("case", width=3),) if cases else ()),
             Column("at station", "right"),
             Column("heading"),
             Column("value", "right", unit=unit),
         )
         rows = tuple(
             (
-                ("rate zero" if one.breakpoint is None else f"axle {one.axle + 1}",),
-                (Value(one.breakpoint or one.position.lead_at, DECIMALS["length"]),),
+                (_met(one),),
+                *(((one.case.name,),) if cases else ()),
+                (Value(_mark(one), DECIMALS["length"]),),
                 (one.position.heading,),
-                (Value(_value_of(group.load, found, one), decimals),),
+                (Value(one.value, decimals),),
             )
             for one in found.near
         )
         yield Table(columns, rows)
 
 
-def _others(count: int) -> str:
-    return "one other position" if count == 1 else f"{count} other positions"
+def _met(candidate: Candidate) -> str:
+    group = candidate.position.groups[0]
+    if group.mark is None:
+        return "rate zero"
+    return "strip's end" if group.anchor is None else f"axle {group.anchor + 1}"
 
 
-def _value_of(load: MovingLoad, found: Governing, candidate: Candidate) -> Fraction:
-    return total_effect(load, candidate.axles_effect, found.uniform)
+def _mark(candidate: Candidate) -> Fraction:
+    mark = candidate.position.groups[0].mark
+    return candidate.position.lead_at if mark is None else mark
+
+
+def _ties(found: Governing, length: str) -> Iterator[str | Value]:
+    """Where else the same value is found: a few places, or how many."""
+    if not found.ties:
+        return
+    if len(found.ties) > MOST_TIES:
+        yield f"The same value is found at {len(found.ties)} other places. "
+        return
+    yield "The same value is found with the lead axle at "
+    for number, tie in enumerate(found.ties):
+        first, last = tie.first.position, tie.last.position
+        yield ", at " if number else ""
+        yield Value(first.lead_at, DECIMALS["length"], length)
+        if first.lead_at != last.lead_at:
+            yield " to "
+            yield Value(last.lead_at, DECIMALS["length"], length)
+        yield f" heading {first.heading}"
+        yield f" ({tie.first.case.name})" if tie.first.case is not found.case else ""
+    yield ". "

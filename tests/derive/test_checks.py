@@ -9,15 +9,17 @@ from typing import Literal
 
 import pytest
 from beams import make_beam
-from making import broken, lines_of, make_effect, make_load
+from loads import given, governing_of, make_load, make_strip
+from making import broken, lines_of, make_effect
 
 from calcpack.derive import checks
 from calcpack.derive.checks import compare_lines, swept_value
 from calcpack.errors import Disagreement
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.beam import Beam
+from calcpack.model.loads import Applies, MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import governing
+from calcpack.moving.critical import Target
 
 BEAM = make_beam(14, [(0, "pin"), (10, "roller")], sections=[4])
 EFFECTS = [
@@ -74,9 +76,40 @@ def test_the_sweep_finds_a_value_that_is_too_low_or_too_high(
     effect: Effect, sense: Literal[1, -1]
 ) -> None:
     second = compare_lines(BEAM, "SI", LINES)
-    found = governing(LINES[effect], LOAD, sense)
-    value = swept_value(second, effect, LOAD, found)
+    target = Target(LINES[effect], effect.kind, effect.station)
+    found = governing_of(target.line, LOAD, sense)
+    ordinates = second.stiffness[effect]
+    value = swept_value(ordinates, target, LOAD, found, 2000)
     assert value == pytest.approx(float(found.value), rel=1e-2)
     for factor in (Fraction(98, 100), Fraction(102, 100), Fraction(-1)):
+        wrong = replace(found, value=found.value * factor)
         with pytest.raises(Disagreement, match="a sweep finds"):
-            swept_value(second, effect, LOAD, replace(found, value=found.value * factor))
+            swept_value(ordinates, target, LOAD, wrong, 2000)
+
+
+def two_cases() -> MovingLoad:
+    """A gap that varies and a strip; the second case, for shears only, twice as heavy."""
+    load = make_load((12, 0), (6, (2, 5)), uniform=1, strips=[make_strip(2, 1, length=4)])
+    (case,) = load.cases
+    heavy = replace(
+        case, name="heavy", factors=(given(2, "factor"),), applies=(Applies(("shear",)),)
+    )
+    return replace(load, cases=(case, heavy))
+
+
+@pytest.mark.parametrize("effect", EFFECTS, ids=lambda effect: effect.kind)
+@pytest.mark.parametrize("sense", SENSES)
+def test_the_sweep_takes_the_cases_that_are_for_the_effect(
+    effect: Effect, sense: Literal[1, -1]
+) -> None:
+    """Shears are held to the second case, which is twice the first; the others to the first."""
+    load = two_cases()
+    target = Target(LINES[effect], effect.kind, effect.station)
+    ordinates = compare_lines(BEAM, "SI", LINES).stiffness[effect]
+    found = governing_of(target.line, replace(load, cases=load.cases[:1]), sense)
+    own = replace(found, value=found.value * (2 if effect.kind == "shear" else 1))
+    other = replace(found, value=found.value * (1 if effect.kind == "shear" else 2))
+    value = swept_value(ordinates, target, load, own, 2000)
+    assert value == pytest.approx(float(own.value), rel=1e-2)
+    with pytest.raises(Disagreement, match="a sweep finds"):
+        swept_value(ordinates, target, load, other, 2000)

@@ -9,7 +9,8 @@ from random import Random
 
 import pytest
 from beams import effects_of, make_beam, random_beam
-from making import lines_of, make_calculation, make_effect, make_load
+from loads import changed, given, make_load, make_strip
+from making import lines_of, make_calculation, make_effect
 from printed_steps import evaluated
 
 from calcpack.derive.book import LOAD_PLACE, Book
@@ -18,6 +19,7 @@ from calcpack.errors import ProgramFault
 from calcpack.exact.formula import PLAIN, Leaf, Symbol, Variable, constant, write
 from calcpack.exact.piecewise import Side
 from calcpack.model.beam import Beam, Release, Section, Support, Typed
+from calcpack.model.loads import Given, Rule
 from calcpack.results import results
 from calcpack.solution import Solution, solve
 from calcpack.statics.system import symbol_of
@@ -128,21 +130,89 @@ def test_a_placement_in_numbers() -> None:
         [f"{root}/axles", f"{root}/uniform"],
     ]
     assert steps[f"{root}/axle=2"]["numbers"] == "5.000 - 3.000"
+    assert steps[f"{root}/axle=2"]["inputs"] == ["moving[0].axles[1].spacing"]
     assert steps["area/M_1/positive"]["unit"] == "ft²"
-    said = [steps[key]["symbols"] for key in steps if key.startswith(("train", root))]
+    said = [steps[key]["symbols"] for key in steps if key.startswith(root)]
     assert said == [
-        "d_1 = 0",
-        "d_2 = a_2",
         "z_1 = x_1",
-        "z_2 = z_1 - d_2",
+        "z_2 = z_1 - a_2",
         "y_1 = η_1",
         "y_2 = η_A + (η_1 - η_A) * (z_2 - x_A) / (x_1 - x_A)",
         "E_a = W_1 * y_1 + W_2 * y_2",
         "E_w = w * A_+",
-        "E_max = (E_a * (1 + I) + E_w) * g",
+        "E_max = (E_a * (1 + I_a) + E_w) * g",
     ]
     least = steps["placement/moving[0]/M_1/min"]
     assert (least["numbers"], least["result"]) == ("0", "0.00")
+
+
+def test_a_load_of_many_parts_in_numbers() -> None:
+    """12, 6 two to four behind it, and 3 per length from 1 behind that on 4, heading right; a force
+    of 8 anywhere; impact 50 / (10 + 125), more than the 0.3 that is allowed; 0.9 of it all.
+
+    6 at midspan and 12 two ahead: 12 x 1.5 + 6 x 2.5 = 33, and the strip from 0 to 4: 3 x 2 x 4 / 2
+    = 12; (33 x 1.3 + 12 x 1.1 + 8 x 2.5 x 1.3) x 0.9 = 73.89. With 12 at midspan it is 30 + 9 of
+    axles and 3 x 1 x 2 / 2 of the strip, less by 3.375."""
+    beam = make_beam(10, [(0, "pin"), (10, "roller")], sections=[5])
+    path = "moving[0].impact"
+    impact = Rule(
+        given(10, f"{path}.length"),
+        over=given(50, f"{path}.over"),
+        beside=given(125, f"{path}.beside"),
+        most=given("0.3", f"{path}.most"),
+    )
+    load = make_load((12, 0), (6, (2, 4)), strips=[make_strip(3, 1, length=4)], headings=("right",))
+    load = changed(
+        load,
+        allowances=(
+            ("axles", Given(impact.value, path, impact)),
+            ("trailing", given("0.1", "moving[0].trailing[0].allowance")),
+        ),
+        factors=(given("0.9", "moving[0].factor"),),
+        concentrated=(given(8, "moving[0].force"),),
+    )
+    solution = solve(make_calculation(beam, [make_effect(beam, "moment", "1")], [load]))
+    steps = {step["key"]: step for step in results(solution)["steps"]}
+    root = "placement/moving[0]/M_1/max"
+    assert steps[root]["result"] == "73.89"
+    assert steps[root]["numbers"] == (
+        "(33.00 * (1 + 0.3000) + 12.00 * (1 + 0.10) + 20.00 * (1 + 0.3000)) * 0.90 * 1.00"
+    )
+    assert steps[f"load/moving[0]/{path}"]["numbers"] == "50.00 / (10.000 + 125.000)"
+    assert steps[f"load/moving[0]/{path}/most"]["inputs"] == [f"{path}.most"]
+    assert f"load/moving[0]/{path}/most" in steps[root]["uses"]
+    said = [steps[key]["symbols"] for key in steps if key.startswith(root)]
+    assert said == [
+        "z_2 = x_1",
+        "z_1 = z_2 + a_2",
+        "y_1 = η_1 + (η_B - η_1) * (z_1 - x_1) / (x_B - x_1)",
+        "y_2 = η_1",
+        "E_a = W_1 * y_1 + W_2 * y_2",
+        "s_q1,start = z_2 - b",
+        "s_q1,end = s_q1,start - l",
+        "y_q1,start = η_A + (η_1 - η_A) * (s_q1,start - x_A) / (x_1 - x_A)",
+        "A_q1,1 = y_q1,start * (s_q1,start - s_q1,end) / 2",
+        "A_q1 = A_q1,1",
+        "E_q1 = q * A_q1",
+        "z_c1 = x_1",
+        "y_c1 = η_1",
+        "E_c = W_c1 * y_c1",
+        "E_max = (E_a * (1 + I_a) + E_q1 * (1 + I_t) + E_c * (1 + I_a)) * k_1 * g",
+    ]
+
+
+def test_a_gap_that_comes_out() -> None:
+    """Supports at 4 and 16 of 20, moment at 10: -2 at either tip. 12 and 6, 18 to 22 apart,
+    stand at the tips, and 20 - 0 is found to lie between them: -2 x 12 - 2 x 6."""
+    beam = make_beam(20, [(4, "pin"), (16, "roller")], sections=[10])
+    load = make_load((12, 0), (6, (18, 22)), headings=("right",))
+    solution = solve(make_calculation(beam, [make_effect(beam, "moment", "1")], [load]))
+    steps = {step["key"]: step for step in results(solution)["steps"]}
+    root = "placement/moving[0]/M_1/min"
+    gap = steps[f"{root}/gap=2"]
+    assert (gap["symbols"], gap["numbers"]) == ("a_2 = z_1 - z_2", "20.000 - 0.000")
+    assert (gap["result"], gap["uses"]) == ("20.000", [f"{root}/axle=1", f"{root}/axle=2"])
+    assert steps[root]["result"] == "-36.00"
 
 
 def test_the_released_beam_closes_again() -> None:

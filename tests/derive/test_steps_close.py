@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import replace
 from fractions import Fraction
 from functools import cache
 from random import Random
+from unittest.mock import patch
 
 import pytest
 from beams import (
@@ -16,12 +17,13 @@ from beams import (
     movements_of,
     random_beam,
     random_indeterminate,
-    random_train,
 )
-from making import make_calculation, make_effect, make_load, make_span_beam
+from loads import make_load, random_load, random_train, ruled
+from making import make_calculation, make_effect, make_span_beam
 from printed_steps import check, is_printed, literals
 
 from calcpack.derive.steps import AreaGroup, PlacementGroup, StationGroup, Step
+from calcpack.envelopes import Along
 from calcpack.exact.numbers import exact_text
 from calcpack.exact.piecewise import Side
 from calcpack.model.beam import Beam
@@ -33,6 +35,7 @@ from calcpack.statics.system import key_of
 
 SEEDS = range(20)
 ELASTIC_SEEDS = range(8)
+VARIED_SEEDS = range(24)
 SIDES: tuple[Side, ...] = ("left", "right")
 HAUL = make_load(("18.5", 0), (40, "13.3"), ("40.2", "4.1"), uniform="0.64", allowance="0.33")
 SECOND = make_load((30, 0), (10, 1), headings=("left",), number=1)
@@ -77,13 +80,19 @@ AWKWARD: dict[str, tuple[Beam, MovingLoad]] = {
 }
 
 
+def derived(beam: Beam, effects: Sequence[Effect], load: MovingLoad) -> Solution:
+    """Solved without what goes along the beam, which has no steps."""
+    with patch("calcpack.solution.along_beam", return_value=Along((), (), ())):
+        return solve(make_calculation(beam, effects, [load]))
+
+
 @cache
 def solved(seed: int) -> Solution:
     rng = Random(seed)
     beam, load = random_beam(rng), random_train(rng)
     effects = effects_of(beam)
     effects = tuple(rng.sample(effects, min(10, len(effects))))
-    return solve(make_calculation(beam, effects, [load]))
+    return derived(beam, effects, load)
 
 
 @cache
@@ -97,7 +106,22 @@ def elastic(seed: int) -> Solution:
     effects = rng.sample(effects_of(beam), 3)
     if beam.stiffness:
         effects += rng.sample(movements_of(beam), 2)
-    return solve(make_calculation(beam, effects, [load]))
+    return derived(beam, effects, load)
+
+
+@cache
+def varied(seed: int) -> Solution:
+    """All that a load may have, every other one with numbers that go by a length; determinate and
+    indeterminate beams by turns."""
+    rng = Random(seed)
+    beam = random_beam(rng)
+    if seed % 2:
+        beam = random_indeterminate(rng)
+        while not beam.stiffness:
+            beam = random_indeterminate(rng)
+    load = random_load(rng)
+    load = ruled(rng, load) if seed % 4 < 2 else load
+    return derived(beam, rng.sample(effects_of(beam), 3), load)
 
 
 @cache
@@ -118,6 +142,11 @@ def test_random_beams_close(seed: int) -> None:
 @pytest.mark.parametrize("seed", ELASTIC_SEEDS)
 def test_indeterminate_beams_close(seed: int) -> None:
     assert with_numbers(elastic(seed)) > 60
+
+
+@pytest.mark.parametrize("seed", VARIED_SEEDS)
+def test_loads_that_vary_close(seed: int) -> None:
+    assert with_numbers(varied(seed)) > 40
 
 
 @pytest.mark.parametrize("name", AWKWARD)
@@ -222,9 +251,12 @@ def summary_of(solution: Solution) -> int:
             same(entry[name]["value"], group_steps[-1].key, group_steps[-1].value)
             under = {step.key.rpartition("/")[2]: step for step in group_steps}
             for index, axle in enumerate(entry[name]["axles"], start=1):
+                if f"axle={index}" not in under:
+                    assert axle["standing"] in ("off the beam", "does not act")
+                    continue
                 at = under[f"axle={index}"]
                 same(axle["at"], at.key, at.value)
-                if axle["standing"] == "off the beam":
+                if axle["standing"] in ("off the beam", "does not act"):
                     assert f"ordinate={index}" not in under
                 else:
                     ordinate = under[f"ordinate={index}"]
@@ -240,6 +272,11 @@ def test_the_summary_of_random_beams_is_derived(seed: int) -> None:
 @pytest.mark.parametrize("seed", ELASTIC_SEEDS)
 def test_the_summary_of_indeterminate_beams_is_derived(seed: int) -> None:
     assert summary_of(elastic(seed)) > 60
+
+
+@pytest.mark.parametrize("seed", VARIED_SEEDS)
+def test_the_summary_of_loads_that_vary_is_derived(seed: int) -> None:
+    assert summary_of(varied(seed)) > 20
 
 
 @pytest.mark.parametrize("name", AWKWARD)

@@ -1,0 +1,196 @@
+"""Envelopes along the beam, absolute maxima, and what occurs together."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from fractions import Fraction
+
+from calcpack.derive.kinds import DECIMALS, EFFECT_KIND
+from calcpack.exact.numbers import printed
+from calcpack.exact.units import SYSTEMS
+from calcpack.model.loads import MovingLoad
+from calcpack.moving.absolute import Absolute
+from calcpack.moving.critical import Governing
+from calcpack.moving.envelope import Envelope, Point
+from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Text, Value
+from calcpack.sheets.envelope_figure import envelope_figure
+from calcpack.sheets.placements import placed_figure
+from calcpack.sheets.stands import numbered_cases, stands
+from calcpack.solution import Solution
+
+WORDS = (
+    "At the tenths of spans and overhangs, at supports and at every section: the greatest and the "
+    "least of each effect under each load, each in its own governing place, found by the same "
+    "search as the placements derived step by step; the lines behind it were compared with both "
+    "second methods. For the equations of a point, state a section there. Beside a moment stands "
+    "the shear that occurs with it, just left | just right of the section; beside a shear the "
+    "moment: under the same place, heading, gaps, loaded stretches and factors."
+)
+ABSOLUTE = (
+    "The greatest sagging moment of each span, section and place of the load found together: the "
+    "governing value is closed in on along the span, and the section given as a decimal of up to "
+    "nine places, for which the value is exact. Without uniform load it stands under an axle."
+)
+NO_AXLE = "no axle"
+HAIR = Fraction(1, 10**8)
+"""A section given to nine decimals is no nearer to where the classical rule has it."""
+DRAWN = ("moment", "shear", "deflection")
+TITLES = {
+    "reaction": "Reactions",
+    "moment reaction": "Couples held by supports",
+    "moment": "Moment",
+    "shear": "Shear",
+    "deflection": "Deflection",
+}
+
+
+def envelope_blocks(solution: Solution) -> tuple[Block, ...]:
+    """Every load's envelopes, each drawn and in a table, then the absolute maxima."""
+    along = solution.along
+    if not along.envelopes:
+        return ()
+    blocks: list[Block] = [Heading(1, ("Envelopes",)), Paragraph((WORDS,))]
+    for load in solution.calculation.moving:
+        blocks.append(Heading(2, ("Envelopes under ", load.name)))
+        if cases := numbered_cases(load):
+            blocks.append(Paragraph((cases,)))
+        for envelope in along.envelopes:
+            if envelope.load is load:
+                blocks += _envelope(solution, envelope)
+        found = [one for one in along.absolutes if one.load is load]
+        if found:
+            blocks += [Paragraph((ABSOLUTE,), leads=True), _absolutes(solution, load, found)]
+            for one in found:
+                blocks += _absolute(solution, one)
+    return tuple(blocks)
+
+
+def _envelope(solution: Solution, envelope: Envelope) -> Iterator[Block]:
+    calculation = solution.calculation
+    unit = SYSTEMS[calculation.units][EFFECT_KIND[envelope.kind]]
+    decimals = DECIMALS[EFFECT_KIND[envelope.kind]]
+    title = f"{TITLES[envelope.kind]} under {envelope.load.name}"
+    yield Heading(3, (title,))
+    if envelope.kind in DRAWN:
+        points = [
+            (point.effect.station, point.greatest.value, point.least.value)
+            for point in envelope.points
+        ]
+        what = f"{envelope.kind} under {envelope.load.name}"
+        yield Figure(
+            envelope_figure(calculation.beam, points, what, unit, decimals, calculation.units)
+        )
+    yield _table(solution, envelope, unit, decimals)
+
+
+def _table(solution: Solution, envelope: Envelope, unit: str, decimals: int) -> Table:
+    units = SYSTEMS[solution.calculation.units]
+    length = units["length"]
+    together = {"moment": "shear", "shear": "moment"}.get(envelope.kind)
+    beside = (
+        (Column(f"with {together}", "right", 2, units[EFFECT_KIND[together]]),) if together else ()
+    )
+    columns = (
+        Column("at", width=2),
+        Column("greatest", "right", 2, unit),
+        Column("lead axle at", "right", 2, length),
+        *beside,
+        Column("least", "right", 2, unit),
+        Column("lead axle at", "right", 2, length),
+        *beside,
+    )
+    rows = tuple(
+        (_at(point), *_half(envelope, point, 0, decimals), *_half(envelope, point, 1, decimals))
+        for point in envelope.points
+    )
+    return Table(columns, rows)
+
+
+def _at(point: Point) -> Text:
+    face = f", {point.effect.face}" if point.effect.face else ""
+    return (f"{point.effect.at}{face}",)
+
+
+def _half(envelope: Envelope, point: Point, which: int, decimals: int) -> Iterator[Text]:
+    found: Governing = (point.greatest, point.least)[which]
+    yield (Value(found.value, decimals),)
+    yield stands(envelope.load, found)
+    if envelope.kind in ("moment", "shear"):
+        places = DECIMALS["force" if envelope.kind == "moment" else "moment"]
+        values = [Value(pair[which], places) for pair in point.together.values()]
+        parts: list[str | Value] = []
+        for value in values if found.case else []:
+            parts += [" | ", value] if parts else [value]
+        yield tuple(parts) or ("—",)
+
+
+def _absolutes(solution: Solution, load: MovingLoad, found: list[Absolute]) -> Table:
+    units = SYSTEMS[solution.calculation.units]
+    names = [support.name for support in solution.calculation.beam.supports]
+    columns = (
+        Column("span", width=2),
+        Column("section at", "right", 2, units["length"]),
+        Column("moment", "right", 2, units["moment"]),
+        Column("lead axle at", "right", 3, units["length"]),
+        Column("at the section", width=2),
+    )
+    rows = tuple(
+        (
+            (f"{one.span}: {names[one.span - 1]} to {names[one.span]}",),
+            (Value(one.section, None if one.section.denominator == 1 else 9),),
+            (Value(one.found.value, DECIMALS["moment"]),),
+            stands(load, one.found),
+            (_under(one),),
+        )
+        for one in found
+    )
+    return Table(columns, rows)
+
+
+def _absolute(solution: Solution, one: Absolute) -> Iterator[Block]:
+    """Where the load stands for one of them, over the line of its section."""
+    calculation, found = solution.calculation, one.found
+    units = SYSTEMS[calculation.units]
+    section = printed(one.section, DECIMALS["length"])
+    title = f"moment at {section}, span {one.span}"
+    yield Figure(
+        placed_figure(calculation.beam, one.line, found, title, "length", calculation.units)
+    )
+    words: list[str | Value] = [
+        f"Span {one.span} under {one.load.name}: without allowance, factors and distribution ",
+        Value(found.static, DECIMALS["moment"], units["moment"]),
+        "; with them ",
+        Value(found.value, DECIMALS["moment"], units["moment"]),
+        ".",
+    ]
+    resultant = _resultant(solution, one)
+    if resultant is not None:
+        words += [
+            " The classical rule holds: the resultant of the axles on the span, at ",
+            Value(resultant, DECIMALS["length"], units["length"]),
+            ", and the axle at the section are equally far from midspan.",
+        ]
+    yield Paragraph(tuple(words))
+
+
+def _resultant(solution: Solution, one: Absolute) -> Fraction | None:
+    """Of the axles on a simple span, if it and the axle at the section straddle midspan."""
+    supports = solution.calculation.beam.supports
+    start, end = supports[one.span - 1].at, supports[one.span].at
+    ordinate = (one.section - start) * (end - one.section) / (end - start)
+    simple = one.line.breaks[0] == start or not one.line.integral(one.line.breaks[0], start)
+    simple = simple and (
+        one.line.breaks[-1] == end or not one.line.integral(end, one.line.breaks[-1])
+    )
+    axles = [share for share in one.found.axles if share.standing == "counts" and share.ordinate]
+    if not simple or one.line.left(one.section) != ordinate or not axles:
+        return None
+    whole = sum((share.weight for share in axles), Fraction(0))
+    resultant = sum((share.weight * share.at for share in axles), Fraction(0)) / whole
+    off = resultant + one.section - start - end
+    return resultant if abs(off) <= HAIR and _under(one) != NO_AXLE else None
+
+
+def _under(one: Absolute) -> str:
+    axles = [str(share.axle + 1) for share in one.found.axles if share.at == one.section]
+    return f"axle {', '.join(axles)}" if axles else NO_AXLE
