@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import itertools
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
+from functools import cached_property
 
 from calcpack.analysis import analyse
 from calcpack.exact.numbers import decimals_to_end, printed
@@ -15,7 +16,7 @@ from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Calculation, Effect, EffectKind
 from calcpack.moving.absolute import Absolute, absolute_maximum, section_line
 from calcpack.moving.critical import Target, governing
-from calcpack.moving.envelope import Envelope, Point, with_governing
+from calcpack.moving.envelope import Envelope, Point, Worst, with_governing, worst_of
 from calcpack.moving.kernels import LineSet
 from calcpack.moving.placement import Stretch, joined
 
@@ -35,6 +36,16 @@ class Along:
     envelopes: tuple[Envelope, ...]
     absolutes: tuple[Absolute, ...]
     hogging: tuple[Stretch, ...]
+
+    @cached_property
+    def worst(self) -> Mapping[str, tuple[Worst, ...]]:
+        """Per kind of effect the worst of all loads; empty where there is only one load."""
+        if len({one.load.path for one in self.envelopes}) < 2:
+            return {}
+        kinds = dict.fromkeys(one.kind for one in self.envelopes)
+        return {
+            kind: worst_of([one for one in self.envelopes if one.kind == kind]) for kind in kinds
+        }
 
 
 def target_of(beam: Beam, effect: Effect, line: Piecewise) -> Target:

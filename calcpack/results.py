@@ -18,7 +18,7 @@ from calcpack.model.beam import Beam
 from calcpack.model.request import Effect
 from calcpack.moving.absolute import Absolute
 from calcpack.moving.critical import Candidate, Governing, Tie
-from calcpack.moving.envelope import Envelope
+from calcpack.moving.envelope import Envelope, Worst
 from calcpack.moving.placement import AxleShare, Stretch, StripShare
 from calcpack.solution import Placement, Settled, Solution
 from calcpack.statics.plan import PlanStep, equation_in_words
@@ -49,7 +49,10 @@ def results(solution: Solution) -> Json:
         "lines": [_line(solution, line) for line in solution.lines],
         "placements": [_placement(placement) for placement in solution.placements],
         "permanent": [_settled(one) for one in solution.settled],
-        "envelopes": [_envelope(one) for one in solution.along.envelopes],
+        "envelopes": [
+            *(_envelope(one) for one in solution.along.envelopes),
+            *(_worst(kind, found) for kind, found in solution.along.worst.items()),
+        ],
         "absolute": [_absolute(one) for one in solution.along.absolutes],
         "combinations": [],
         "checks": [],
@@ -232,6 +235,23 @@ def _envelope(found: Envelope) -> Json:
             }
             for name in names
         },
+    }
+
+
+def _worst(kind: str, found: Sequence[Worst]) -> Json:
+    """Over all loads, hence without the name of one: ``where`` says which load it is."""
+    pairs = {"max": [one.greatest for one in found], "min": [one.least for one in found]}
+    return {
+        "load": "",
+        "kind": kind,
+        "at": [float(one.effect.station) for one in found],
+        "side": [one.effect.face or "" for one in found],
+        **{extreme: [float(one.value) for _, one in some] for extreme, some in pairs.items()},
+        "where": {
+            extreme: [{"load": load.name, **_stands(one)} for load, one in some]
+            for extreme, some in pairs.items()
+        },
+        "with": {},
     }
 
 

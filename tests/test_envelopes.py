@@ -203,6 +203,28 @@ def _greatest(calculation: Calculation) -> list[float]:
     return [float(one) for one in np.array(greatest(targets, calculation.moving[0], 1))]
 
 
+def test_the_worst_of_several_loads() -> None:
+    """A single axle of 20 and a uniform load of 3 on a simple span of 20: at x the axle gives
+    x (20 - x), the load 3 x (20 - x) / 2, always more; of the shears the axle's where it is more
+    than 3 (20 - x)² / 40, that is below x = 20/3 from the right end."""
+    beam = make_beam(SPAN, [(0, "pin"), (SPAN, "roller")], sections=[8])
+    loads = [make_load((20, 0)), make_load(uniform=3, number=1)]
+    found = results(solve(make_calculation(beam, [make_effect(beam, "moment", "1")], loads)))
+    worst = {one["kind"]: one for one in found["envelopes"] if one["load"] == ""}
+    assert {*worst} == {"reaction", "moment", "shear"}
+    for index, x in enumerate(worst["moment"]["at"]):
+        assert worst["moment"]["max"][index] == pytest.approx(1.5 * x * (SPAN - x))
+        where = worst["moment"]["where"]["max"][index]
+        assert where["load"] == ("Load 2" if 0 < x < SPAN else "Load 1")
+    for index, x in enumerate(worst["shear"]["at"]):
+        axle, uniform = SPAN - x, 3 * (SPAN - x) ** 2 / 40
+        assert worst["shear"]["max"][index] == pytest.approx(max(axle, uniform))
+        if axle != uniform:
+            where = worst["shear"]["where"]["max"][index]
+            assert where["load"] == ("Load 2" if uniform > axle else "Load 1")
+    assert worst["reaction"]["max"] == [30, 30]
+
+
 def test_a_calculation_without_loads_has_no_envelopes() -> None:
     beam = make_beam(SPAN, [(0, "pin"), (SPAN, "roller")], sections=[8])
     found = results(solve(make_calculation(beam, [make_effect(beam, "moment", "1")])))

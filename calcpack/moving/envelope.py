@@ -34,6 +34,35 @@ class Envelope:
     points: tuple[Point, ...]
 
 
+@dataclass(frozen=True)
+class Worst:
+    """The worst load at one point: each extreme with the load that causes it."""
+
+    effect: Effect
+    greatest: tuple[MovingLoad, Governing]
+    least: tuple[MovingLoad, Governing]
+
+
+def worst_of(envelopes: Sequence[Envelope]) -> tuple[Worst, ...]:
+    """The envelopes of one kind under several loads as one; of equal loads the first is named."""
+    effects = dict.fromkeys(point.effect for one in envelopes for point in one.points)
+    found = []
+    for effect in effects:
+        there = [
+            (one.load, point) for one in envelopes for point in one.points if point.effect == effect
+        ]
+        greatest = max(there, key=lambda pair: pair[1].greatest.value)
+        least = min(there, key=lambda pair: pair[1].least.value)
+        found.append(
+            Worst(
+                effect,
+                (greatest[0], greatest[1].greatest),
+                (least[0], least[1].least),
+            )
+        )
+    return tuple(sorted(found, key=lambda one: (one.effect.station, one.effect.face == "right")))
+
+
 def caused(line: Piecewise, found: Governing, meets: Side | None = None) -> Fraction:
     """What a load that stands as it governs one effect causes for another.
 

@@ -2,16 +2,17 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from fractions import Fraction
 
 from calcpack.derive.kinds import DECIMALS, EFFECT_KIND
 from calcpack.exact.numbers import printed
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.loads import MovingLoad
+from calcpack.model.request import Effect
 from calcpack.moving.absolute import Absolute
 from calcpack.moving.critical import Governing
-from calcpack.moving.envelope import Envelope, Point
+from calcpack.moving.envelope import Envelope, Point, Worst
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Text, Value
 from calcpack.sheets.envelope_figure import envelope_figure
 from calcpack.sheets.placements import placed_figure
@@ -34,6 +35,7 @@ ABSOLUTE = (
 NO_AXLE = "no axle"
 HAIR = Fraction(1, 10**8)
 """A section given to nine decimals is no nearer to where the classical rule has it."""
+WORST = "Of the loads above the one that is worse at each point, each by itself and not together."
 DRAWN = ("moment", "shear", "deflection")
 TITLES = {
     "reaction": "Reactions",
@@ -62,7 +64,46 @@ def envelope_blocks(solution: Solution) -> tuple[Block, ...]:
             blocks += [Paragraph((ABSOLUTE,), leads=True), _absolutes(solution, load, found)]
             for one in found:
                 blocks += _absolute(solution, one)
+    if along.worst:
+        blocks += [Heading(2, ("Envelopes over all loads",)), Paragraph((WORST,))]
+        for kind, worst in along.worst.items():
+            blocks += _worst(solution, kind, worst)
     return tuple(blocks)
+
+
+def _worst(solution: Solution, kind: str, found: Sequence[Worst]) -> Iterator[Block]:
+    """The worst of all loads at each point, and which it is."""
+    calculation = solution.calculation
+    unit, decimals = SYSTEMS[calculation.units][EFFECT_KIND[kind]], DECIMALS[EFFECT_KIND[kind]]
+    yield Heading(3, (f"{TITLES[kind]} over all loads",))
+    if kind in DRAWN:
+        points = [(one.effect.station, one.greatest[1].value, one.least[1].value) for one in found]
+        what = f"{kind} over all loads"
+        yield Figure(
+            envelope_figure(calculation.beam, points, what, unit, decimals, calculation.units)
+        )
+    columns = (
+        Column("at", width=2),
+        Column("greatest", "right", 2, unit),
+        Column("under", width=4),
+        Column("least", "right", 2, unit),
+        Column("under", width=4),
+    )
+    rows = tuple(
+        (
+            _at(one.effect),
+            *(
+                cell
+                for load, extreme in (one.greatest, one.least)
+                for cell in (
+                    (Value(extreme.value, decimals),),
+                    (load.name if extreme.case else "—",),
+                )
+            ),
+        )
+        for one in found
+    )
+    yield Table(columns, rows)
 
 
 def _envelope(solution: Solution, envelope: Envelope) -> Iterator[Block]:
@@ -100,15 +141,18 @@ def _table(solution: Solution, envelope: Envelope, unit: str, decimals: int) -> 
         *beside,
     )
     rows = tuple(
-        (_at(point), *_half(envelope, point, 0, decimals), *_half(envelope, point, 1, decimals))
+        (
+            _at(point.effect),
+            *_half(envelope, point, 0, decimals),
+            *_half(envelope, point, 1, decimals),
+        )
         for point in envelope.points
     )
     return Table(columns, rows)
 
 
-def _at(point: Point) -> Text:
-    face = f", {point.effect.face}" if point.effect.face else ""
-    return (f"{point.effect.at}{face}",)
+def _at(effect: Effect) -> Text:
+    return (f"{effect.at}, {effect.face}" if effect.face else effect.at,)
 
 
 def _half(envelope: Envelope, point: Point, which: int, decimals: int) -> Iterator[Text]:
