@@ -2,13 +2,15 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
 from calcpack.sheets.blocks import Block, Heading, Paragraph, Preformatted
 from calcpack.solution import Solution
 
 AGAIN = (
-    "This PDF carries calc.toml, results.json, the notebook and a manifest with their SHA-1 and "
-    "SHA-256 sums. Save calc.toml to an empty folder and run, with the version named in the foot "
-    "of every sheet:"
+    "This PDF carries calc.toml and its tables, results.json, the notebook and a manifest with "
+    "their SHA-1 and SHA-256 sums. Save calc.toml and its tables to an empty folder and run, with "
+    "the version named in the foot of every sheet:"
 )
 SAME = (
     "The digest in the foot of every sheet is the SHA-256 of the input without its cover together "
@@ -26,4 +28,12 @@ def appendix_blocks(solution: Solution) -> tuple[Block, ...]:
         Paragraph((SAME,)),
         Heading(2, ("calc.toml",)),
         Preformatted(solution.calculation.text),
+        *_tables(solution),
     )
+
+
+def _tables(solution: Solution) -> Iterator[Block]:
+    """Each table beside calc.toml as text."""
+    for name, content in solution.calculation.tables:
+        yield Heading(2, (name,))
+        yield Preformatted(content.decode("utf-8-sig").replace("\r\n", "\n"))

@@ -20,8 +20,9 @@ WORDS = (
     "influence line. Stiffness solution, in floating point: Euler-Bernoulli elements between "
     "the key stations. The bound is on the difference of ordinates and slopes, as a part of 1 + "
     "the largest ordinate (of the largest ordinate for deflections and rotations). The "
-    "placements were compared with a sweep of each train over the stiffness ordinates in 2000 "
-    "steps: it never exceeds the value found, nor falls short of it by more than a step allows."
+    "placements were compared with a sweep of each load over the stiffness ordinates in 2000 steps "
+    "(400 for an effect in a table): it never exceeds the value found, nor falls short of it by "
+    "more than a step allows. Points of envelopes are found by the same search and not swept."
 )
 BY_HAND = (
     "For a check without sight of the derivation: from the data alone, find each quantity for the "
