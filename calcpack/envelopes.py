@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import itertools
-from collections.abc import Callable, Iterator, Mapping
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 from functools import cached_property
@@ -15,10 +15,12 @@ from calcpack.model.beam import Beam, Face, Section, Station, Typed
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Calculation, Effect, EffectKind
 from calcpack.moving.absolute import Absolute, absolute_maximum, section_line
-from calcpack.moving.critical import Target, governing
+from calcpack.moving.critical import governing
 from calcpack.moving.envelope import Envelope, Point, Worst, with_governing, worst_of
+from calcpack.moving.governing import Governing
 from calcpack.moving.kernels import LineSet
 from calcpack.moving.placement import Stretch, joined
+from calcpack.moving.target import Target
 
 PARTS = 10
 FACES: tuple[Face, Face] = ("left", "right")
@@ -30,12 +32,16 @@ Report = Callable[[str], None]
 class Along:
     """What the moving loads cause along the beam.
 
-    ``hogging`` are the stretches where a uniform load on all spans causes a negative moment.
+    Attributes:
+        unshared: effects without a distribution of the load, of which nothing is told.
+        absolutes: of the spans all over which the load has a distribution of the moment.
+        hogging: where a uniform load on all spans causes a negative moment.
     """
 
-    envelopes: tuple[Envelope, ...]
-    absolutes: tuple[Absolute, ...]
-    hogging: tuple[Stretch, ...]
+    envelopes: tuple[Envelope, ...] = ()
+    unshared: tuple[tuple[MovingLoad, Effect], ...] = ()
+    absolutes: tuple[Absolute, ...] = ()
+    hogging: tuple[Stretch, ...] = ()
 
     @cached_property
     def worst(self) -> Mapping[str, tuple[Worst, ...]]:
@@ -60,22 +66,26 @@ def target_of(beam: Beam, effect: Effect, line: Piecewise) -> Target:
 def along_beam(calculation: Calculation, report: Report = lambda _: None) -> Along:
     """Every load's extremes at the tenths of spans and overhangs, at supports and at sections."""
     if not calculation.moving:
-        return Along((), (), ())
+        return Along()
     beam = _with_tenths(calculation.beam)
     effects = tuple(_effects(beam, deflections=bool(beam.stiffness)))
     found = analyse(beam, calculation.units, effects, calculation.redundants)
     lines = {one.effect: one.line for one in found.lines}
-    envelopes, absolutes = [], []
+    envelopes: list[Envelope] = []
+    unshared: list[tuple[MovingLoad, Effect]] = []
+    absolutes: list[Absolute] = []
     for load in calculation.moving:
         for kind in dict.fromkeys(effect.kind for effect in effects):
             report(f"{load.name}: {kind} along the beam")
-            envelopes.append(_envelope(beam, load, kind, lines))
+            asked = [effect for effect in lines if effect.kind == kind]
+            shared = [one for one in asked if load.share(kind, one.station) is not None]
+            unshared += [(load, one) for one in asked if one not in shared]
+            envelopes += [_envelope(beam, load, kind, shared, lines)] if shared else []
         for number, span in enumerate(_spans(beam), start=1):
             report(f"{load.name}: absolute maximum of span {number}")
             absolute = _absolute(beam, load, number, span, lines)
             absolutes += [absolute] if absolute else []
-    envelopes = [one for one in envelopes if one.points]
-    return Along(tuple(envelopes), tuple(absolutes), _hogging(beam, lines))
+    return Along(tuple(envelopes), tuple(unshared), tuple(absolutes), _hogging(beam, lines))
 
 
 def _hogging(beam: Beam, lines: Lines) -> tuple[Stretch, ...]:
@@ -162,12 +172,10 @@ def _called(station: Station) -> str:
     return printed(station.at, 3 if decimals is None else decimals)
 
 
-def _envelope(beam: Beam, load: MovingLoad, kind: str, lines: Lines) -> Envelope:
-    effects = [effect for effect in lines if effect.kind == kind]
-    effects = [one for one in effects if load.share(one.kind, one.station) is not None]
+def _envelope(
+    beam: Beam, load: MovingLoad, kind: str, effects: Sequence[Effect], lines: Lines
+) -> Envelope:
     targets = [target_of(beam, effect, lines[effect]) for effect in effects]
-    if not targets:
-        return Envelope(load, kind, ())
     base = LineSet([target.line for target in targets])
     greatest = governing(targets, load, 1, base, near=0)
     least = governing(targets, load, -1, base, near=0)
@@ -206,18 +214,21 @@ def _absolute(
     ends = tuple(
         _end_moment(lines, at, face) for at, face in zip(span, ("right", "left"), strict=True)
     )
-    middle = (span[0] + span[1]) / 2
 
     def target(section: Fraction) -> Target:
         line = section_line(section, span, (ends[0], ends[1]))
         return target_of(beam, Effect("moment", "", section), line)
 
-    if load.share("moment", middle) is None:
+    found: list[tuple[Fraction, Governing]] = []
+    for start, end, share in load.shares_along("moment", *span):
+        if share is None:
+            return None
+        alone = replace(load, shares=(replace(share, kinds=(), start=None, end=None),))
+        here = absolute_maximum((start, end), target, alone)
+        found += [here] if here else []
+    if not found:
         return None
-    found = absolute_maximum(span, target, load)
-    if found is None:
-        return None
-    section, placement = found
+    section, placement = max(found, key=lambda one: one[1].value)
     return Absolute(load, number, section, target(section).line, placement)
 
 

@@ -17,8 +17,8 @@ from calcpack.exact.units import SYSTEMS
 from calcpack.model.beam import Beam
 from calcpack.model.request import Effect
 from calcpack.moving.absolute import Absolute
-from calcpack.moving.critical import Candidate, Governing, Tie
 from calcpack.moving.envelope import Envelope, Worst
+from calcpack.moving.governing import Candidate, Governing, Tie
 from calcpack.moving.placement import AxleShare, Stretch, StripShare
 from calcpack.solution import Placement, Settled, Solution
 from calcpack.statics.plan import PlanStep, equation_in_words

@@ -27,7 +27,8 @@ from calcpack.exact.numbers import printed
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import MovingLoad, Permanent
 from calcpack.model.request import Calculation, Detail, Effect
-from calcpack.moving.critical import Governing, governing
+from calcpack.moving.critical import governing
+from calcpack.moving.governing import Governing
 from calcpack.moving.kernels import LineSet
 from calcpack.moving.placement import Sense
 from calcpack.statics.influence import value_of

@@ -27,8 +27,10 @@ from calcpack.model.loads import (
     Strip,
     Train,
 )
-from calcpack.moving.critical import Governing, Target, governing
+from calcpack.moving.critical import governing
+from calcpack.moving.governing import Governing
 from calcpack.moving.placement import Group, Position
+from calcpack.moving.target import Target
 
 Spacing = Place | tuple[Place, Place | None] | list[Place]
 """A number, a range (without upper bound: None), or a list."""

@@ -15,6 +15,8 @@ from making import make_calculation, make_effect
 from calcpack.intake import read
 from calcpack.model.request import Calculation
 from calcpack.results import results
+from calcpack.sheets.blocks import Paragraph
+from calcpack.sheets.envelopes import envelope_blocks
 from calcpack.solution import Solution, solve
 
 SPAN = 20
@@ -193,6 +195,17 @@ def test_absolute_maxima_of_a_continuous_beam() -> None:
         assert max(found) == pytest.approx(float(one.found.value), rel=1e-4)
 
 
+def test_the_absolute_maximum_at_a_fixed_support() -> None:
+    """An axle of 10 on a span of 10, fixed at A, and 4 beyond B: at the tip it causes -40 at B and,
+    the carry-over factor being 1/2 (textbooks of structural analysis), 20 at A; in the span at most
+    0.174 x 10 x 10 = 17.4 (handbooks' beam fixed at one end and supported at the other; value from
+    memory)."""
+    beam = make_beam(14, [(0, "fixed"), (10, "roller")], sections=[5])
+    effects = [make_effect(beam, "moment", "1")]
+    (found,) = results(solve(make_calculation(beam, effects, [make_load((10, 0))])))["absolute"]
+    assert (found["at"], found["value"]) == (0, 20)
+
+
 def _greatest(calculation: Calculation) -> list[float]:
     from calcpack.analysis import analyse
     from calcpack.envelopes import target_of
@@ -238,3 +251,62 @@ def test_progress_is_told_part_by_part() -> None:
     assert done == [*range(len(told))]
     assert {one[1] for one in told} == {len(told)}
     assert "Truck: absolute maximum of span 2" in {one[2] for one in told}
+
+
+def shared(*stated: str) -> Calculation:
+    """An axle of 10 on a simple span of 20; at x the greatest moment is x (20 - x) / 2."""
+    text = (
+        'format = 1\nunits = "SI"\ncover.title = "Store beam"\nbeam.length = 20\n'
+        'beam.supports = [ { name = "A", kind = "pin", at = 0 }, '
+        '{ name = "B", kind = "roller", at = 20 } ]\nbeam.sections = [ { name = "S", at = 6 } ]\n'
+        'effects = [ { kind = "moment", at = "S" } ]\n'
+        '[[moving]]\nname = "Cart"\naxles = [ { weight = 10 } ]\n'
+        f"distribution = [ {', '.join(stated)} ]\n"
+    )
+    return read(text.encode())
+
+
+def said_of(solution: Solution) -> str:
+    return " ".join(
+        str(part)
+        for block in envelope_blocks(solution)
+        if isinstance(block, Paragraph)
+        for part in block.text
+    )
+
+
+@pytest.mark.parametrize(
+    ("stretch", "told", "untold"),
+    [
+        ("to = 8", [0, 2, 4, 6, 8], "10, 12, 14, 16, 18, B"),
+        ("from = 4, to = 14", [4, 6, 8, 10, 12, 14], "A, 2, 16, 18, B"),
+    ],
+)
+def test_nothing_is_told_where_no_distribution_is_stated(
+    stretch: str, told: list[int], untold: str
+) -> None:
+    """Statics: at x the moment of half the cart is x (20 - x) / 4."""
+    solution = solve(shared(f'{{ kind = "moment", {stretch}, value = 0.5 }}'))
+    found = results(solution)
+    (moment,) = found["envelopes"]
+    assert moment["kind"] == "moment"
+    assert moment["at"] == told
+    assert moment["max"] == pytest.approx([x * (20 - x) / 4 for x in told])
+    assert found["absolute"] == []
+    said = said_of(solution)
+    assert (
+        f"every reaction; moment at {untold}; every shear; the absolute maximum of span 1" in said
+    )
+
+
+@pytest.mark.parametrize("turned", [False, True])
+def test_the_absolute_maximum_by_stretches_of_one_distribution(turned: bool) -> None:
+    """Statics: at 8 half the cart causes 8 x 12 / 4 = 24, more than two fifths of it at midspan,
+    10 x 10 / 5 = 20; whichever of the two is stated first."""
+    stated = ["{ to = 8.0, value = 0.5 }", "{ from = 8.0, value = 0.4 }"]
+    solution = solve(shared(*(reversed(stated) if turned else stated)))
+    (absolute,) = results(solution)["absolute"]
+    assert (absolute["at"], absolute["value"]) == (8, 24)
+    moment = envelope(results(solution), "moment")
+    assert moment["max"][moment["at"].index(8)] == pytest.approx(19.2 if turned else 24)
+    assert "Not found" not in said_of(solution)

@@ -18,8 +18,7 @@ from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.beam import Beam, Face, Section, Typed
 from calcpack.model.loads import Axle, Case, Gap, Given, MovingLoad, Strip, Train
 from calcpack.model.request import Effect
-from calcpack.moving.critical import trains_value
-from calcpack.moving.placement import Group, Position
+from calcpack.moving.placement import Group, Position, trains_value
 
 SENSES: tuple[Literal[1, -1], ...] = (1, -1)
 SIDES: tuple[Side, ...] = ("left", "right")

@@ -15,7 +15,7 @@ from calcpack.exact.units import SYSTEMS
 from calcpack.intake import read
 from calcpack.intake.standards import model_names, read_model
 from calcpack.render.models import TO_STATE, WIDTH, formula
-from calcpack.sheets.load_tables import amount, gap_words
+from calcpack.sheets.load_words import amount, gap_words
 
 TRUCK = """\
   8             32            32

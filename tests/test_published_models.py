@@ -23,7 +23,9 @@ from calcpack.exact.piecewise import Piecewise
 from calcpack.intake import read
 from calcpack.model.loads import MovingLoad
 from calcpack.moving.absolute import absolute_maximum, section_line
-from calcpack.moving.critical import Governing, Target, governing
+from calcpack.moving.critical import governing
+from calcpack.moving.governing import Governing
+from calcpack.moving.target import Target
 
 CASES: dict[str, dict[str, Any]] = {
     case["id"]: case

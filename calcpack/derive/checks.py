@@ -16,7 +16,8 @@ from calcpack.exact.units import SYSTEMS, parse_unit
 from calcpack.model.beam import Beam
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Governing, Target, applies
+from calcpack.moving.governing import Governing
+from calcpack.moving.target import Target, applies
 from calcpack.second.kinematic import influence_line
 from calcpack.second.stiffness import Floats, Ordinates, ordinates
 from calcpack.second.sweep import swept_case

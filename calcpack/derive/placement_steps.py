@@ -15,7 +15,7 @@ from calcpack.derive.strip_steps import StripWriter, intensity_of
 from calcpack.exact.formula import ONE, Formula, Leaf, Symbol, constant, total
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import Case, Gap, Given, Part, Strip
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 from calcpack.moving.placement import AxleShare, Group, Position
 from calcpack.statics.system import key_of
 

@@ -13,7 +13,7 @@ from calcpack.exact.numbers import printed
 from calcpack.exact.piecewise import Side
 from calcpack.model.loads import MovingLoad, Permanent
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 from calcpack.statics.influence import Cut
 from calcpack.statics.plan import PlanStep
 

@@ -11,8 +11,21 @@ from fractions import Fraction
 from functools import cached_property
 from typing import Literal
 
+from calcpack.exact.polynomial import (
+    Coefficients,
+    continues,
+    derivative,
+    evaluated,
+    primitive,
+    shifted,
+    trimmed,
+    turned,
+    whole_value,
+)
+from calcpack.exact.roots import sign_changes
+
 Side = Literal["left", "right"]
-Coefficients = tuple[Fraction, ...]
+_NOTHING: Coefficients = (Fraction(0),)
 
 
 @dataclass(frozen=True)
@@ -46,14 +59,14 @@ class Piecewise:
         for start, end, given in parts:
             if breaks and breaks[-1] != start:
                 raise ValueError("pieces must follow one another without gap or overlap")
-            coefficients = _trimmed(tuple(Fraction(value) for value in given))
+            coefficients = trimmed(tuple(Fraction(value) for value in given))
             if not breaks:
                 breaks.append(Fraction(start))
             if start == end:
                 continue
             if end < start:
                 raise ValueError("a piece must run from left to right")
-            if pieces and _continues(coefficients, pieces[-1], breaks[-1] - breaks[-2]):
+            if pieces and continues(coefficients, pieces[-1], breaks[-1] - breaks[-2]):
                 breaks[-1] = Fraction(end)
             else:
                 pieces.append(coefficients)
@@ -73,7 +86,7 @@ class Piecewise:
             ValueError: x lies outside [a, b].
         """
         index = self._index(x, side)
-        return _whole_value(self._whole[index], x - self.breaks[index])
+        return whole_value(self._whole[index], x - self.breaks[index])
 
     def left(self, x: Fraction) -> Fraction:
         return self.value(x, "left")
@@ -86,7 +99,7 @@ class Piecewise:
         index = self._index(x, side)
         whole, part = self._whole[index]
         slope = tuple(power * value for power, value in enumerate(whole))[1:] or (0,)
-        return _whole_value((slope, part), x - self.breaks[index])
+        return whole_value((slope, part), x - self.breaks[index])
 
     @cached_property
     def _whole(self) -> tuple[tuple[tuple[int, ...], int], ...]:
@@ -99,7 +112,7 @@ class Piecewise:
 
     def derivative(self) -> Piecewise:
         """The derivative of each piece; jumps leave no trace in it."""
-        return self.mapped(_derivative)
+        return self.mapped(derivative)
 
     def _index(self, x: Fraction, side: Side) -> int:
         if not self.breaks[0] <= x <= self.breaks[-1]:
@@ -134,7 +147,7 @@ class Piecewise:
                     at[number] += 1
                 piece = one.pieces[at[number]]
                 if factor and piece != _NOTHING:
-                    moved = _shifted(piece, start - one.breaks[at[number]])
+                    moved = shifted(piece, start - one.breaks[at[number]])
                     total += [Fraction(0)] * (len(moved) - len(total))
                     for power, value in enumerate(moved):
                         total[power] += factor * value
@@ -167,7 +180,7 @@ class Piecewise:
         """
         total = self.breaks[0] + self.breaks[-1]
         return Piecewise.from_pieces(
-            (total - end, total - start, _turned(_shifted(piece, end - start)))
+            (total - end, total - start, turned(shifted(piece, end - start)))
             for start, end, piece in reversed(list(self._spread()))
         )
 
@@ -177,30 +190,16 @@ class Piecewise:
         >>> Piecewise.from_pieces([(0, 3, (0, 2))]).antiderivative().left(Fraction(3))
         Fraction(9, 1)
         """
+        return self._antiderivative
+
+    @cached_property
+    def _antiderivative(self) -> Piecewise:
         value, parts = Fraction(0), []
         for start, end, piece in self._spread():
-            primitive = (value, *(v / (k + 1) for k, v in enumerate(piece)))
-            parts.append((start, end, primitive))
-            value = _evaluated(primitive, end - start)
+            area = primitive(piece, value)
+            parts.append((start, end, area))
+            value = evaluated(area, end - start)
         return Piecewise.from_pieces(parts)
-
-    def jumps(self, after: Coefficients) -> tuple[Coefficients, ...]:
-        """By how much the polynomial changes at each breakpoint, in powers of x - break.
-
-        Left of the first breakpoint the function is zero, right of the last one ``after``, a
-        polynomial in x - break. What continues changes by zeros, exactly.
-
-        >>> Piecewise.from_pieces([(0, 2, (0, 1))]).jumps((Fraction(0),))
-        ((Fraction(0, 1), Fraction(1, 1)), (Fraction(-2, 1), Fraction(-1, 1)))
-        """
-        found = [self.pieces[0]]
-        following = (*self.pieces[1:], after)
-        for (start, end, piece), then in zip(self._spread(), following, strict=True):
-            before = _shifted(piece, end - start)
-            length = max(len(before), len(then))
-            pairs = zip(_padded(then, length), _padded(before, length), strict=True)
-            found.append(tuple(one - other for one, other in pairs))
-        return tuple(found)
 
     def part_of_sign(self, sign: Literal[1, -1]) -> Piecewise:
         """The function where it has that sign, zero elsewhere; it ends at ``zeros``.
@@ -215,7 +214,7 @@ class Piecewise:
 
     def _piece_from(self, start: Fraction) -> Coefficients:
         index = self._index(start, "right")
-        return _shifted(self.pieces[index], start - self.breaks[index])
+        return shifted(self.pieces[index], start - self.breaks[index])
 
     def zeros(self) -> tuple[Fraction, ...]:
         """Stations strictly inside a piece where the function changes sign.
@@ -241,25 +240,23 @@ class Piecewise:
         return tuple(
             start + root
             for start, end, piece in self._spread()
-            for root in sign_changes(_derivative(piece), end - start)
+            for root in sign_changes(derivative(piece), end - start)
         )
 
     def _spread(self) -> Iterator[tuple[Fraction, Fraction, Coefficients]]:
         return zip(self.breaks, self.breaks[1:], self.pieces, strict=False)
 
     def integral(self, start: Fraction, end: Fraction) -> Fraction:
-        """The exact integral from start to end, both in [a, b].
+        """The exact integral from start to end.
+
+        Raises:
+            ValueError: an end lies outside [a, b].
 
         >>> Piecewise.from_pieces([(0, 2, (0, 1))]).integral(Fraction(0), Fraction(2))
         Fraction(2, 1)
         """
-        total = Fraction(0)
-        for left, right, piece in self._spread():
-            low, high = max(left, start), min(right, end)
-            if low < high:
-                primitive = (Fraction(0), *(v / (k + 1) for k, v in enumerate(piece)))
-                total += _evaluated(primitive, high - left) - _evaluated(primitive, low - left)
-        return total
+        whole = self._antiderivative
+        return whole.left(end) - whole.left(start)
 
     def signed_runs(self) -> tuple[tuple[Fraction, Fraction, int], ...]:
         """Stretches (start, end, sign of the function there) between breakpoints and zeros."""
@@ -286,158 +283,9 @@ class Piecewise:
     def _areas(self) -> tuple[Fraction, Fraction]:
         positive = negative = Fraction(0)
         for start, end, sign in self.signed_runs():
-            piece, t = self._piece_from(start), end - start
-            area = _evaluated((Fraction(0), *(v / (k + 1) for k, v in enumerate(piece))), t)
+            area = self.integral(start, end)
             if sign > 0:
                 positive += area
             else:
                 negative += area
         return positive, negative
-
-
-_NOTHING: Coefficients = (Fraction(0),)
-GRID = Fraction(1, 10**9)
-"""Roots that are not rational are given to the nearest multiple of this."""
-FLOAT_HALVINGS = 56
-
-
-def sign_changes(piece: Sequence[Fraction], end: Fraction) -> tuple[Fraction, ...]:
-    """Where a polynomial changes sign strictly inside (0, end), in order.
-
-    A straight one exactly; a curved one is bisected between the turns of its derivative, down to
-    ``GRID``. A root where it touches zero without changing sign is none.
-
-    >>> sign_changes((Fraction(-2), Fraction(0), Fraction(1)), Fraction(2))
-    (Fraction(707106781, 500000000),)
-    """
-    piece = _trimmed(tuple(piece))
-    if len(piece) == 2:
-        root = -piece[0] / piece[1]
-        return (root,) if 0 < root < end else ()
-    if len(piece) < 2 or _keeps_sign(piece, end):
-        return ()
-    stops = (Fraction(0), *sign_changes(_derivative(piece), end), end)
-    found = []
-    for low, high in itertools.pairwise(stops):
-        if _evaluated(piece, low) * _evaluated(piece, high) < 0:
-            found.append(_root(piece, low, high))
-    return tuple(root for root in found if 0 < root < end)
-
-
-def _keeps_sign(piece: Coefficients, end: Fraction) -> bool:
-    """Whether a polynomial surely has one sign strictly inside (0, end).
-
-    It lies between its Bernstein coefficients: those inside are found in floats and must be clear
-    of zero by more than rounding, those at the two ends are its values there, taken exactly.
-    """
-    degree, run = len(piece) - 1, float(end)
-    terms = [float(value) * run**power for power, value in enumerate(piece)]
-    doubt = 1e-12 * sum(map(abs, terms))
-    inner = [
-        sum(math.comb(j, k) / math.comb(degree, k) * terms[k] for k in range(j + 1))
-        for j in range(1, degree)
-    ]
-    if not (all(one > doubt for one in inner) or all(one < -doubt for one in inner)):
-        return False
-    sign = 1 if inner[0] > 0 else -1
-    return sign * piece[0] >= 0 and sign * _evaluated(piece, end) >= 0
-
-
-def _root(piece: Coefficients, low: Fraction, high: Fraction) -> Fraction:
-    """The multiple of ``GRID`` nearest to where a polynomial passes zero between two places.
-
-    Its values at multiples of the grid are whole numbers of one part: bisection goes by those, from
-    a bracket about a root in floats where that holds it.
-    """
-    parts = math.lcm(*(value.denominator for value in piece))
-    per, top = GRID.denominator, len(piece) - 1
-    whole = [int(value * parts) * per ** (top - power) for power, value in enumerate(piece)]
-
-    def value(place: int) -> int:
-        total = 0
-        for coefficient in reversed(whole):
-            total = total * place + coefficient
-        return total
-
-    first, last = int(low / GRID), int(high / GRID) + 1
-    rising = _evaluated(piece, low) < 0
-    guess = _guess([float(one) for one in piece], float(low), float(high), rising)
-    one, other = max(first, int(guess * per) - 2), min(last, int(guess * per) + 3)
-    if (value(one) < 0) == rising and (value(other) < 0) != rising:
-        first, last = one, other
-    while last - first > 1:
-        middle = (first + last) // 2
-        if (value(middle) < 0) == rising:
-            first = middle
-        else:
-            last = middle
-    return min(first, last, key=lambda place: abs(value(place))) * GRID
-
-
-def _guess(piece: Sequence[float], low: float, high: float, rising: bool) -> float:
-    """Where a polynomial passes zero, in floats, by bisection."""
-    for _ in range(FLOAT_HALVINGS):
-        middle, total = (low + high) / 2, 0.0
-        for coefficient in reversed(piece):
-            total = total * middle + coefficient
-        if (total < 0) == rising:
-            low = middle
-        else:
-            high = middle
-    return low
-
-
-def _padded(piece: Coefficients, length: int) -> Coefficients:
-    return piece + (Fraction(0),) * (length - len(piece))
-
-
-def _turned(piece: Sequence[Fraction]) -> Coefficients:
-    """The polynomial with its argument's sign changed."""
-    return tuple(-value if power % 2 else value for power, value in enumerate(piece))
-
-
-def _derivative(piece: Sequence[Fraction]) -> Coefficients:
-    return tuple(power * value for power, value in enumerate(piece))[1:] or (Fraction(0),)
-
-
-def _trimmed(piece: Coefficients) -> Coefficients:
-    end = len(piece)
-    while end > 1 and not piece[end - 1]:
-        end -= 1
-    return piece[:end] or (Fraction(0),)
-
-
-def _whole_value(whole: tuple[tuple[int, ...], int], t: Fraction) -> Fraction:
-    """A polynomial whose coefficients are whole numbers of one part, reduced only once."""
-    coefficients, part = whole
-    top, bottom = t.numerator, t.denominator
-    total, scale = 0, 1
-    for coefficient in reversed(coefficients):
-        total = total * top + coefficient * scale
-        scale *= bottom
-    return Fraction(total, part * (scale // bottom))
-
-
-def _evaluated(piece: Sequence[Fraction], t: Fraction) -> Fraction:
-    total = Fraction(0)
-    for coefficient in reversed(piece):
-        total = total * t + coefficient
-    return total
-
-
-def _continues(piece: Coefficients, before: Coefficients, by: Fraction) -> bool:
-    """Whether a piece is the polynomial before it, seen ``by`` further right."""
-    if len(piece) != len(before) or piece[-1] != before[-1]:
-        return False
-    return piece == _shifted(before, by)
-
-
-def _shifted(piece: Coefficients, by: Fraction) -> Coefficients:
-    """The same polynomial with its origin ``by`` further right (Horner's scheme)."""
-    if not by or len(piece) == 1:
-        return piece
-    result = list(piece)
-    for low in range(len(result) - 1):
-        for power in range(len(result) - 2, low - 1, -1):
-            result[power] += by * result[power + 1]
-    return tuple(result)

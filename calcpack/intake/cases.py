@@ -1,12 +1,19 @@
-"""Cases that a way of acting spreads into."""
+"""Headings of a case, and the cases that a way of acting spreads into."""
 
 from __future__ import annotations
 
 import itertools
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from dataclasses import replace
 
-from calcpack.model.loads import Case, Train
+from calcpack.model.loads import Case, Heading, Train
+
+HEADINGS: Mapping[str, tuple[Heading, ...]] = {
+    "right": ("right",),
+    "left": ("left",),
+    "both": ("right", "left"),
+}
+"""By what calc.toml and the files of load models say."""
 
 
 def spread_cases(case: Case, whole_train: bool) -> Iterator[Case]:

@@ -10,7 +10,7 @@ from pathlib import Path
 
 from calcpack.errors import ProgramFault
 from calcpack.intake.beam import Outline
-from calcpack.intake.cases import spread_cases
+from calcpack.intake.cases import HEADINGS, spread_cases
 from calcpack.intake.places import read_place
 from calcpack.intake.published import Published, read_published
 from calcpack.intake.reading import Reading, nearest
@@ -20,7 +20,6 @@ from calcpack.model.loads import (
     Axle,
     Case,
     Given,
-    Heading,
     MovingLoad,
     Part,
     Share,
@@ -35,11 +34,6 @@ MOST_CASES = 64
 MOST_TIES = 1024
 """The most ways in which the varying gaps of one case may be held."""
 
-HEADINGS: dict[str, tuple[Heading, ...]] = {
-    "right": ("right",),
-    "left": ("left",),
-    "both": ("right", "left"),
-}
 _OWN = (
     "table",
     "axles",

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Iterable
 from datetime import date
 from fractions import Fraction
 from typing import Any
@@ -97,10 +98,19 @@ def alternatives(choices: tuple[str | int, ...]) -> str:
     >>> alternatives(("pin", "roller", "fixed"))
     '"pin", "roller" or "fixed"'
     """
-    *others, last = (
-        f'"{choice}"' if isinstance(choice, str) else str(choice) for choice in choices
+    return listed(
+        (f'"{choice}"' if isinstance(choice, str) else choice for choice in choices), "or"
     )
-    return f"{', '.join(others)} or {last}" if others else last
+
+
+def listed(some: Iterable[str | int], joint: str = "and") -> str:
+    """Words as a sentence has them.
+
+    >>> listed([1, 2, 3])
+    '1, 2 and 3'
+    """
+    *others, last = map(str, some)
+    return f"{', '.join(others)} {joint} {last}" if others else last
 
 
 def _text(raw: Any, field: Field) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
+from itertools import pairwise
 from typing import Literal
 
 Heading = Literal["right", "left"]
@@ -310,6 +311,26 @@ class MovingLoad:
     def share(self, kind: str, at: Fraction) -> Share | None:
         """The distribution for an effect; None where none is stated for it."""
         return next((one for one in self.shares if one.holds(kind, at)), None)
+
+    def shares_along(
+        self, kind: str, start: Fraction, end: Fraction
+    ) -> tuple[tuple[Fraction, Fraction, Share | None], ...]:
+        """The stretches (start, end, distribution) inside which one distribution holds throughout.
+
+        >>> half = Share(Given(Fraction(1, 2), "distribution"), start=Fraction(4))
+        >>> load = MovingLoad("Cart", (), (half,), "moving[0]")
+        >>> before, beyond = load.shares_along("moment", Fraction(0), Fraction(9))
+        >>> before == (0, 4, None), beyond == (4, 9, half)
+        (True, True)
+        """
+        ends = {
+            at
+            for one in self.shares
+            for at in (one.start, one.end)
+            if at is not None and start < at < end and one.holds(kind, at)
+        }
+        stops = sorted({start, end, *ends})
+        return tuple((one, two, self.share(kind, (one + two) / 2)) for one, two in pairwise(stops))
 
 
 @dataclass(frozen=True)

@@ -15,17 +15,19 @@ from fractions import Fraction
 from calcpack.exact.numbers import decimals_to_end
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import MovingLoad
-from calcpack.moving.critical import Governing, Target, governing, greatest, trains_value
-from calcpack.moving.placement import Stretch
+from calcpack.moving.critical import governing, greatest
+from calcpack.moving.governing import Governing
+from calcpack.moving.placement import Stretch, trains_value
+from calcpack.moving.target import Target
 
 GRID_PARTS = 48
-"""Parts of the span at whose ends sections are tried first."""
+"""Parts of the stretch at whose ends sections are tried first."""
 ROUNDS, NARROWER, ASIDE = 3, 4, 4
 """Rounds of closing in, each so many times narrower, with so many sections to either side."""
 HILLS, NEARLY = 3, 0.99
 """As many of the highest sections of the grid are closed in on, if nearly as high as the best."""
 POLISHED = (Fraction(1, 10**3), Fraction(1, 10**5))
-"""Parts of the span over which the top is then taken for a parabola, exactly."""
+"""Parts of the stretch over which the top is then taken for a parabola, exactly."""
 
 
 @dataclass(frozen=True)
@@ -43,7 +45,7 @@ def section_line(section: Fraction, span: Stretch, ends: tuple[Piecewise, Piecew
     """The influence line of the moment at a section of a span.
 
     Args:
-        section: strictly inside the span.
+        section: in the span.
         span: from one support to the next.
         ends: the lines of the moment just right of the one and just left of the other.
 
@@ -67,23 +69,23 @@ def section_line(section: Fraction, span: Stretch, ends: tuple[Piecewise, Piecew
 
 
 def absolute_maximum(
-    span: Stretch,
+    stretch: Stretch,
     target: Callable[[Fraction], Target],
     load: MovingLoad,
 ) -> tuple[Fraction, Governing] | None:
     """The section with the greatest sagging moment, and how the load then stands.
 
     Args:
-        span: from one support to the next.
+        stretch: of a span, where the load has one distribution; its ends are sections too.
         target: what is looked for at a section, by its station.
         load: the load.
 
     Returns:
         None where no section has a positive moment.
     """
-    start, end = span
+    start, end = stretch
     step = (end - start) / GRID_PARTS
-    sections = [start + step * part for part in range(1, GRID_PARTS)]
+    sections = [start + step * part for part in range(GRID_PARTS + 1)]
     values = _values(target, load, sections)
     hills = _highest(sections, values)
     if not hills:
@@ -93,7 +95,7 @@ def absolute_maximum(
             [round(hill + step * part / ASIDE, 9) for part in range(-ASIDE, ASIDE + 1)]
             for hill in hills
         ]
-        tried = [[one for one in some if start < one < end] for some in around]
+        tried = [[one for one in some if start <= one <= end] for some in around]
         values = _values(target, load, [one for some in tried for one in some])
         found = iter(values)
         hills = [max(((next(found), one) for one in some), key=_value)[1] for some in tried]
@@ -101,14 +103,14 @@ def absolute_maximum(
     judged = [
         (section, governing([target(section)], load, 1)[0])
         for hill in hills
-        for section in _polished(hill, span, target, load)
+        for section in _polished(hill, stretch, target, load)
     ]
     best = min(judged, key=lambda one: (-one[1].value, decimals_to_end(one[0], 9) or 0, one[0]))
     return best if best[1].value > 0 else None
 
 
 def _polished(
-    section: Fraction, span: Stretch, target: Callable[[Fraction], Target], load: MovingLoad
+    section: Fraction, stretch: Stretch, target: Callable[[Fraction], Target], load: MovingLoad
 ) -> set[Fraction]:
     """The section, and where what stands at it now would have its top if it moved with it.
 
@@ -117,9 +119,9 @@ def _polished(
     """
     found = {section}
     for part in POLISHED:
-        step = (span[1] - span[0]) * part
+        step = (stretch[1] - stretch[0]) * part
         stands = governing([target(section)], load, 1, near=0)[0]
-        if stands.case is None or not span[0] < section - step < section + step < span[1]:
+        if stands.case is None or not stretch[0] < section - step < section + step < stretch[1]:
             break
         below, here, above = (
             _moved(target(section + by).line, stands, section, by) for by in (-step, 0, step)
@@ -127,7 +129,7 @@ def _polished(
         if 2 * here <= below + above:
             break
         top = section + step * (above - below) / (2 * (2 * here - below - above))
-        if not span[0] < top < span[1] or abs(top - section) > 8 * step:
+        if not stretch[0] < top < stretch[1] or abs(top - section) > 8 * step:
             break
         section = round(top, 9)
         found |= {section, round(section, 6)}

@@ -15,7 +15,7 @@ from fractions import Fraction
 
 import numpy as np
 
-from calcpack.exact.piecewise import GRID
+from calcpack.exact.roots import GRID
 from calcpack.model.loads import Case, Gap, Strip
 from calcpack.moving.kernels import Floats, Kind, View
 from calcpack.moving.runs import Element, Found, Numbers, search

@@ -6,136 +6,30 @@ import heapq
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
-from functools import cached_property
 
 import numpy as np
 
 from calcpack.exact.piecewise import Piecewise, Side
-from calcpack.model.loads import Applies, Case, Heading, MovingLoad
+from calcpack.model.loads import Case, Heading, MovingLoad
 from calcpack.moving.chains import Chain, Stand
+from calcpack.moving.governing import NEAR_CANDIDATES, Candidate, Governing
 from calcpack.moving.kernels import LineSet, View
 from calcpack.moving.placement import (
-    AxleShare,
     Group,
     Position,
     Sense,
-    Stretch,
-    StripShare,
     axle_shares,
     axles_in_pairs,
-    joined,
     rate,
     strip_shares,
+    trains_value,
 )
+from calcpack.moving.staying import NOTHING_STAYS, staying
+from calcpack.moving.target import Target, applies
+from calcpack.moving.ties import tied_and_near
 
-NEAR_CANDIDATES = 5
 MOST_PLACES = 400
 """Places at most that are evaluated exactly for one effect, also where more tie."""
-
-
-@dataclass(frozen=True)
-class Target:
-    """The influence line of an effect, and what decides which cases of a load are for it.
-
-    Attributes:
-        line: the influence line.
-        kind, at: of the effect.
-        interior: whether it is at a support that is neither the first nor the last.
-        spans: stretches between supports, overhangs included; each takes one concentrated load.
-    """
-
-    line: Piecewise
-    kind: str = "moment"
-    at: Fraction = Fraction(0)
-    interior: bool = False
-    spans: tuple[Stretch, ...] = ()
-
-    def raised_on(self, sense: Sense) -> tuple[tuple[Stretch, ...], Fraction]:
-        """The stretches where the line has the sign of ``sense``, and their area."""
-        return self._raised[sense]
-
-    @cached_property
-    def _raised(self) -> dict[int, tuple[tuple[Stretch, ...], Fraction]]:
-        line, found = self.line, {}
-        positive, negative = line.areas()
-        for sense, area in ((1, positive), (-1, negative)):
-            runs = [(start, end) for start, end, sign in line.signed_runs() if sign == sense]
-            found[sense] = joined(runs), area
-        return found
-
-
-@dataclass(frozen=True)
-class Candidate:
-    """A position looked at, and the value of the whole case there, all factors included."""
-
-    case: Case
-    position: Position
-    value: Fraction
-
-
-@dataclass(frozen=True)
-class Tie:
-    """Other places with the governing value: from ``first`` to ``last``, which may be the same."""
-
-    first: Candidate
-    last: Candidate
-
-
-@dataclass(frozen=True)
-class Governing:
-    """The greatest (or least) value of one effect under one load, and where the load then stands.
-
-    Attributes:
-        sense: 1 the greatest, -1 the least.
-        value: of the case, with allowances, factors and distribution; never of the other sign,
-            since the load may stay away.
-        share: distribution.
-        case: the governing one; None where no case is for this effect, or all had better stay away.
-        position: of its trains; None where no place of them helps.
-        axles: what each axle adds; strips: each strip; concentrated: each floating force.
-        loaded: the stretches under its uniform load, and their area.
-        ties: other places with the same value.
-        looked_at: how many places were looked at, over all cases and headings.
-        near: the best candidates at other places, best first; the first is the next-worst.
-        rates: change of the trains' static effect per unit of travel to the right, left and right
-            of here.
-    """
-
-    sense: Sense
-    value: Fraction
-    share: Fraction
-    case: Case | None
-    position: Position | None
-    axles: tuple[AxleShare, ...]
-    strips: tuple[StripShare, ...]
-    concentrated: tuple[AxleShare, ...]
-    loaded: tuple[Stretch, ...]
-    area: Fraction
-    ties: tuple[Tie, ...]
-    looked_at: int
-    near: tuple[Candidate, ...]
-    rates: tuple[Fraction, Fraction] | None
-
-    @property
-    def static(self) -> Fraction:
-        """The effect without allowances, factors and distribution."""
-        return self.axles_effect + self.trailing_effect + self.uniform_effect
-
-    @property
-    def axles_effect(self) -> Fraction:
-        """Static effect of all axles and concentrated forces."""
-        return sum((one.effect for one in (*self.axles, *self.concentrated)), Fraction(0))
-
-    @property
-    def trailing_effect(self) -> Fraction:
-        """Static effect of all strips."""
-        return sum((one.effect for one in self.strips), Fraction(0))
-
-    @property
-    def uniform_effect(self) -> Fraction:
-        """Static effect of the uniform load."""
-        uniform = self.case.uniform if self.case else None
-        return uniform.value * self.area if uniform else Fraction(0)
 
 
 def governing(
@@ -187,29 +81,6 @@ def greatest(
     return [sense * value for value in found]
 
 
-def applies(case: Case, load: MovingLoad, target: Target, sense: Sense) -> bool:
-    """Whether a case is for the target in that sense."""
-
-    def holds(one: Applies) -> bool:
-        if (one.kinds and target.kind not in one.kinds) or one.sense not in (0, sense):
-            return False
-        if one.region == "hogging":
-            return _hogs(load, target)
-        return one.region == "everywhere" or target.interior
-
-    return not case.applies or any(map(holds, case.applies))
-
-
-def _hogs(load: MovingLoad, target: Target) -> bool:
-    """Whether a uniform load on all spans causes a negative moment there, or is said to."""
-    if target.kind == "moment reaction":
-        return True  # whichever way it turns: on the safe side
-    if load.hogging is not None:
-        return any(start <= target.at <= end for start, end in load.hogging)
-    first, last = target.line.breaks[0], target.line.breaks[-1]
-    return target.line.integral(first, last) < 0
-
-
 class _Search:
     """One case over the targets that it is for; ``row_of`` gives each its row by its number."""
 
@@ -226,7 +97,7 @@ class _Search:
         self.row_of = {number: row for row, number in enumerate(own)}
         self.lines = [targets[number].line for number in own]
         self.shares = [_share(load, targets[number]) for number in own]
-        self.stays = [_staying(case, targets[number], sense) for number in own]
+        self.stays = [staying(case, targets[number], sense) for number in own]
         self.chains: dict[Heading, Chain] = {}
         if case.trains and own:
             for heading in case.headings:
@@ -285,70 +156,10 @@ class _Place:
     stands: tuple[Stand, ...]
 
 
-@dataclass(frozen=True)
-class _Staying:
-    """What of a case does not travel, and its value with allowances and factors."""
-
-    forces: tuple[AxleShare, ...]
-    loaded: tuple[Stretch, ...]
-    area: Fraction
-    value: Fraction
-
-
-NOTHING_STAYS = _Staying((), (), Fraction(0), Fraction(0))
-
-
-def _staying(case: Case, target: Target, sense: Sense) -> _Staying:
-    forces = _concentrated(case, target, sense)
-    value = sum((one.effect for one in forces), Fraction(0)) * case.weighs("axles")
-    loaded: tuple[Stretch, ...] = ()
-    area = Fraction(0)
-    if case.uniform is not None:
-        loaded, area = target.raised_on(sense)
-        value += case.uniform.value * area * case.weighs("uniform")
-    return _Staying(forces, loaded, area, value)
-
-
-def _concentrated(case: Case, target: Target, sense: Sense) -> tuple[AxleShare, ...]:
-    """The greatest forces at the greatest ordinates, one a span; without spans all are one."""
-    if not case.concentrated:
-        return ()
-    line = target.line
-    whole = (line.breaks[0], line.breaks[-1])
-    peaks = sorted(
-        (_peak(line, span, sense) for span in target.spans or (whole,)),
-        key=lambda peak: -sense * peak[2],
-    )
-    weights = sorted((one.value for one in case.concentrated), reverse=True)
-    return tuple(
-        AxleShare(number, weight, at, side, ordinate, "counts")
-        for number, (weight, (at, side, ordinate)) in enumerate(zip(weights, peaks, strict=False))
-        if sense * ordinate > 0
-    )
-
-
-def _peak(line: Piecewise, span: Stretch, sense: Sense) -> tuple[Fraction, Side, Fraction]:
-    """Where in a span, and on which side, the line is greatest in its sense, and how great."""
-    start, end = span
-    places: list[tuple[Fraction, Side]] = [(start, "right"), (end, "left")]
-    for at in (*line.breaks, *line.turns()):
-        if start < at < end:
-            places += [(at, "left"), (at, "right")]
-    values = [(at, side, line.value(at, side)) for at, side in places]
-    return max(values, key=lambda one: (sense * one[2], -one[0]))
-
-
 def _share(load: MovingLoad, target: Target) -> Fraction:
     share = load.share(target.kind, target.at)
     assert share is not None, "the reader sees to a distribution for every effect"
     return share.value.value
-
-
-def trains_value(line: Piecewise, case: Case, position: Position, sense: Sense) -> Fraction:
-    """The trains' effect at a position with allowances and factors, without distribution."""
-    axles = sum((one.effect for one in axle_shares(line, case, position, sense)), Fraction(0))
-    strips = sum((one.effect for one in strip_shares(line, case, position, sense)), Fraction(0))
-    return axles * case.weighs("axles") + strips * case.weighs("trailing")
 
 
 def _position(heading: Heading, line: Piecewise, stands: Sequence[Stand]) -> Position:
@@ -398,7 +209,7 @@ def _judged(
             best, case, value = None, search.case, alone
     position = best.position if best else None
     stays = next((one.stays[row] for one, row in searches if one.case is case), NOTHING_STAYS)
-    ties, near = _others(line, sense, found, best) if best else ((), ())
+    ties, near = tied_and_near(line, sense, found, best) if best else ((), ())
     return Governing(
         sense,
         value,
@@ -446,57 +257,3 @@ def _preference(position: Position) -> tuple[bool, bool, Fraction, bool]:
         position.lead_at,
         position.groups[0].side == "right",
     )
-
-
-def _others(
-    line: Piecewise, sense: Sense, candidates: Sequence[Candidate], best: Candidate
-) -> tuple[tuple[Tie, ...], tuple[Candidate, ...]]:
-    """Other places with the same value, and the best places with a lesser one."""
-    seen: set[tuple[Heading, Fraction, object]] = set()
-    others: list[Candidate] = []
-    for one in candidates:
-        # Of a case the best at each place; what differs only in axles off the beam is the same.
-        heading, lead_at = one.position.heading, one.position.lead_at
-        if not any((heading, lead_at, told) in seen for told in (one.value, one.case.name)):
-            others.append(one)
-        seen.update((heading, lead_at, told) for told in (one.value, one.case.name))
-    tied = [one for one in others if one.value == best.value]
-    near = [one for one in others if one.value != best.value]
-    return tuple(_ranges(line, sense, tied, best)), tuple(near[:NEAR_CANDIDATES])
-
-
-def _ranges(
-    line: Piecewise, sense: Sense, tied: Sequence[Candidate], best: Candidate
-) -> Iterator[Tie]:
-    """Places of one value, those between which it does not change as one range."""
-
-    def order(one: Candidate) -> tuple[str, bool, tuple[Fraction, ...], Fraction]:
-        gaps = tuple(gap for _, gap in axles_in_pairs(one.position))
-        return one.case.name, one.position.heading == "left", gaps, one.position.lead_at
-
-    ranges: list[Tie] = []
-    for one in sorted(tied, key=order):
-        before = ranges[-1].last if ranges else None
-        alike = before is not None and order(before)[:-1] == order(one)[:-1]
-        if before is not None and alike and _level(line, sense, before, one):
-            ranges[-1] = Tie(ranges[-1].first, one)
-        else:
-            ranges.append(Tie(one, one))
-    return (one for one in ranges if one.first is not one.last or one.first is not best)
-
-
-def _level(line: Piecewise, sense: Sense, one: Candidate, other: Candidate) -> bool:
-    """Whether the value is the same all the way from one place to the next event.
-
-    Between two events it is a polynomial of at most the fourth power: five equal values will do.
-    """
-    run = other.position.lead_at - one.position.lead_at
-    there = trains_value(line, one.case, one.position, sense)
-    last = len(one.position.stations) - 1
-    group = Group(0, last, "left", True, None, None)
-    for quarter in (1, 2, 3):
-        stations = tuple(at + run * quarter / 4 for at in one.position.stations)
-        between = Position(one.position.heading, stations, (group,))
-        if trains_value(line, one.case, between, sense) != there:
-            return False
-    return True

@@ -9,7 +9,7 @@ from fractions import Fraction
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 
 
 @dataclass(frozen=True)

@@ -206,6 +206,13 @@ def joined(runs: Sequence[Stretch]) -> tuple[Stretch, ...]:
     return tuple(found)
 
 
+def trains_value(line: Piecewise, case: Case, position: Position, sense: Sense) -> Fraction:
+    """The trains' effect at a position with allowances and factors, without distribution."""
+    axles = sum((one.effect for one in axle_shares(line, case, position, sense)), Fraction(0))
+    strips = sum((one.effect for one in strip_shares(line, case, position, sense)), Fraction(0))
+    return axles * case.weighs("axles") + strips * case.weighs("trailing")
+
+
 def rate(line: Piecewise, case: Case, position: Position, sense: Sense, side: Side) -> Fraction:
     """Change of the trains' static effect per unit of travel to the right, on one side of here.
 

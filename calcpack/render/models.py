@@ -8,32 +8,33 @@ from __future__ import annotations
 
 import itertools
 import textwrap
-from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
-from dataclasses import dataclass, replace
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import replace
 from decimal import Decimal
 from fractions import Fraction
-from math import floor
 from typing import Any
 
 from calcpack.exact.units import SYSTEMS
 from calcpack.intake.shown import decimal_text
+from calcpack.intake.standard_keys import several
 from calcpack.intake.standards import Model, cases_of, model_names, read_model
-from calcpack.intake.values import alternatives
-from calcpack.model.loads import Applies, Axle, Case, Given, Part, Strip, Train
-from calcpack.sheets.load_tables import PARTS, REGIONS, RELIEVING, amount, gap_words
+from calcpack.intake.values import alternatives, listed
+from calcpack.model.loads import Axle, Case, Given, Part, Train
+from calcpack.render.train_picture import draw, fitting_step, picture_of
+from calcpack.sheets.load_words import (
+    PARTS,
+    RELIEVING,
+    amount,
+    applies_words,
+    axles_words,
+    gap_words,
+    strip_words,
+)
 
 WIDTH = 100
 TO_STATE = "state it"
 
 _LABEL = 12
-_ENDLESS = 7
-"""Columns of a load without end, before its dots."""
-_STEPS = [
-    Fraction(digits, 4) * Fraction(10) ** power
-    for power in range(2, -4, -1)
-    for digits in (20, 16, 12, 10, 8, 6, 5, 4)
-]
-"""Lengths that a column of a drawing may stand for, from coarse to fine."""
 _SOURCES = {
     "page": "taken from a printed page; the standard itself decides",
     "memory": "from memory: not compared with the standard",
@@ -150,8 +151,8 @@ def _case(model: Model, raw: Mapping[str, Any]) -> Case:
 
 def _drawn(model: Model, trains: Sequence[Train]) -> Iterator[str]:
     units = SYSTEMS[model.units]
-    pictures = [_picture(train, units) for train in trains]
-    step = _step(pictures)
+    pictures = [picture_of(train, units) for train in trains]
+    step = fitting_step(pictures, WIDTH)
     said = "The foremost axle or load is at the left."
     if any(picture.spans for picture in pictures):
         said += f" A column is {decimal_text(step)} {units['length']}."
@@ -162,23 +163,17 @@ def _drawn(model: Model, trains: Sequence[Train]) -> Iterator[str]:
     for train, picture in zip(trains, pictures, strict=True):
         axles = [axle for axle in train.axles if axle.weight.value]
         yield ""
-        yield from _wrapped(f'Train "{train.name}"{_whole(axles, units["force"])}')
+        whole = f": {axles_words(axles, units)}" if axles else ""
+        yield from _wrapped(f'Train "{train.name}"{whole}')
         yield ""
-        yield from _draw(picture, step).lines
+        yield from draw(picture, step).lines
         if axles:
             yield ""
             yield from _axle_table(axles, units)
         if train.strips:
             yield ""
         for strip in train.strips:
-            yield from _wrapped(_strip_words(strip, units, bool(axles)), "  ")
-
-
-def _whole(axles: Sequence[Axle], force: str) -> str:
-    if not axles:
-        return ""
-    whole = amount(sum((axle.weight.value for axle in axles), Fraction(0)))
-    return f": {whole} {force} on {len(axles)} {'axle' if len(axles) == 1 else 'axles'}"
+            yield from _wrapped(strip_words(strip, bool(axles), units), "  ")
 
 
 def _axle_table(axles: Sequence[Axle], units: Mapping[str, str]) -> Iterator[str]:
@@ -189,153 +184,6 @@ def _axle_table(axles: Sequence[Axle], units: Mapping[str, str]) -> Iterator[str
     widths = [max(len(row[column]) for row in rows) for column in range(3)]
     for row in rows:
         yield "  " + "  ".join(cell.rjust(width) for cell, width in zip(row, widths, strict=True))
-
-
-def _strip_words(strip: Strip, units: Mapping[str, str], axles: bool) -> str:
-    length = units["length"]
-    what = f"{amount(strip.amount.value)} {units['force' if strip.of_weight else 'line load']}"
-    what += f" over {amount(strip.length.value)} {length}" if strip.length else " without end"
-    point = ("first axle" if strip.ahead else "last axle") if axles else "foremost point"
-    start = f"{'ahead of' if strip.ahead else 'behind'} the {point}"
-    extent = "only where it raises the effect" if strip.broken else "unbroken"
-    return f"{what}, from {amount(strip.start.value)} {length} {start}, {extent}"
-
-
-@dataclass(frozen=True)
-class _Bar:
-    """A load ahead or behind: its ends, the near one first; None: without end."""
-
-    near: Fraction
-    far: Fraction | None
-    ahead: bool
-    broken: bool
-    says: str
-
-
-@dataclass(frozen=True)
-class _Picture:
-    """A train in places from its foremost axle, to the right.
-
-    Attributes:
-        weights: places and weights of its axles.
-        spans: distances between neighbouring places, in words.
-    """
-
-    weights: tuple[tuple[Fraction, str], ...]
-    bars: tuple[_Bar, ...]
-    spans: tuple[tuple[Fraction, Fraction, str], ...]
-
-
-@dataclass(frozen=True)
-class _Drawing:
-    """A picture in lines; ``tidy`` where each text has its place beside the others."""
-
-    lines: list[str]
-    tidy: bool
-
-    @property
-    def fits(self) -> bool:
-        return max(map(len, self.lines)) <= WIDTH
-
-
-def _picture(train: Train, units: Mapping[str, str]) -> _Picture:
-    at, weights, spans = Fraction(0), [], []
-    for axle in train.axles:
-        if axle.gap:
-            spans.append((at, at + axle.gap.least, gap_words(axle.gap)))
-            at += axle.gap.least
-        if axle.weight.value:
-            weights.append((at, amount(axle.weight.value)))
-    bars = [_bar(strip, at, units) for strip in train.strips]
-    first, last = [Fraction(0)], [at]
-    for bar in bars:
-        ends = [end for end in (bar.near, bar.far) if end is not None]
-        first += [end for end in ends if end < 0]
-        last += [end for end in ends if end > at]
-    for places in (sorted(set(first)), sorted(set(last))):
-        spans += [(one, two, amount(two - one)) for one, two in itertools.pairwise(places)]
-    return _Picture(tuple(weights), tuple(bars), tuple(sorted(spans)))
-
-
-def _bar(strip: Strip, last: Fraction, units: Mapping[str, str]) -> _Bar:
-    said = f"{amount(strip.amount.value)} {units['force' if strip.of_weight else 'line load']}"
-    away = -1 if strip.ahead else 1
-    near = (Fraction(0) if strip.ahead else last) + away * strip.start.value
-    far = near + away * strip.length.value if strip.length else None
-    return _Bar(near, far, strip.ahead, strip.broken, said)
-
-
-def _step(pictures: Iterable[_Picture]) -> Fraction:
-    """The coarsest scale at which all texts have their place, or the finest that fits."""
-    pictures = list(pictures)
-    fitting = _STEPS[0]
-    for step in _STEPS:
-        drawings = [_draw(picture, step) for picture in pictures]
-        if not all(drawing.fits for drawing in drawings):
-            break
-        fitting = step
-        if all(drawing.tidy for drawing in drawings):
-            break
-    return fitting
-
-
-def _draw(picture: _Picture, step: Fraction) -> _Drawing:
-    def column(at: Fraction) -> int:
-        return floor(at / step + Fraction(1, 2))
-
-    above = [(column(at), said) for at, said in picture.weights]
-    middle: dict[int, str] = {}
-    for bar in picture.bars:
-        start, signs = _bar_signs(bar, column)
-        middle |= dict(enumerate(signs, start))
-        above.append((start + len(signs) // 2, bar.says))
-    middle |= {column(at): "↓" for at, _ in picture.weights}
-    ruler: dict[int, str] = {}
-    below: list[tuple[int, str]] = []
-    tidy = True
-    for left, right, said in picture.spans:
-        start, end = column(left), column(right)
-        inside = end - start - 1
-        ruler |= {start: "|", end: "|"}
-        if inside < len(said):
-            below.append(((start + end) // 2, said))
-        on_it = said if inside >= len(said) else ""
-        ruler |= dict(enumerate(on_it.center(inside, "-"), start + 1))
-        tidy &= inside >= len(said) + 2
-    rows = [*reversed(_stacked(above)), middle, ruler, *_stacked(below)]
-    shift = 2 - min(min(row) for row in rows if row)
-    lines = [_line(row, shift) for row in rows if row]
-    return _Drawing(lines, tidy and len(_stacked(above)) == 1)
-
-
-def _bar_signs(bar: _Bar, column: Callable[[Fraction], int]) -> tuple[int, str]:
-    """The column where a load ahead or behind begins, and its signs."""
-    near = column(bar.near)
-    reach = _ENDLESS - 1 if bar.far is None else abs(column(bar.far) - near)
-    signs = "".join("= "[bar.broken and number % 3 == 2] for number in range(reach + 1))
-    signs += " ..." if bar.far is None else ""
-    return (near - len(signs) + 1, signs[::-1]) if bar.ahead else (near, signs)
-
-
-def _stacked(texts: Iterable[tuple[int, str]]) -> list[dict[int, str]]:
-    """Texts about their columns, each in the first row where it has room."""
-    rows: list[dict[int, str]] = []
-    for centre, said in sorted(texts):
-        start = centre - (len(said) - 1) // 2
-        taken = range(start - 1, start + len(said) + 1)
-        row = next((row for row in rows if not row.keys() & set(taken)), None)
-        if row is None:
-            row = {}
-            rows.append(row)
-        row |= dict(enumerate(said, start))
-    return rows
-
-
-def _line(row: Mapping[int, str], shift: int) -> str:
-    signs = [" "] * (max(row) + shift + 1)
-    for at, sign in row.items():
-        signs[at + shift] = sign
-    return "".join(signs).rstrip()
 
 
 # The cases
@@ -349,7 +197,7 @@ def _cases(model: Model) -> Iterator[str]:
         words = f'Cases of variant "{name}"' if name else "Cases"
         yield from ("", *_wrapped(f"{words}{_factor_words(variant, ', ')}"))
         for index, raw in enumerate(model.document["cases"]):
-            if "variant" in raw and name not in _several(raw["variant"]):
+            if "variant" in raw and name not in several(raw["variant"]):
                 continue
             head = f"{raw['name']} ({raw['clause']})"
             if index in told:
@@ -364,7 +212,7 @@ def _case_words(model: Model, raw: Mapping[str, Any]) -> Iterator[str]:
     if case.trains:
         yield from _labelled("trains", _train_words(case, units["length"]))
         if "acting" in raw:
-            axles = "; or ".join(map(_listed, raw["acting"]))
+            axles = "; or ".join(map(listed, raw["acting"]))
             yield from _labelled("acting", f"of its axles only {axles}; all keep their places")
         elif raw.get("relieving") == "whole train":
             yield from _labelled("axles", "All axles of a train count, or none.")
@@ -375,11 +223,11 @@ def _case_words(model: Model, raw: Mapping[str, Any]) -> Iterator[str]:
         yield from _labelled("uniform", f"{said} wherever it raises the effect")
     if "concentrated" in raw:
         words = [_number_words(one, units["force"], units["length"]) for one in raw["concentrated"]]
-        several = ", each in another span" if len(words) > 1 else ""
-        yield from _labelled("forces", f"{' and '.join(words)} anywhere{several}")
+        apart = ", each in another span" if len(words) > 1 else ""
+        yield from _labelled("forces", f"{' and '.join(words)} anywhere{apart}")
     for one in raw.get("allowance", ()):
         value = _typed(one["value"]) if "value" in one else "I"
-        said = f"{_listed([PARTS[part] for part in _several(one['of'])])} × (1 + {value})"
+        said = f"{listed([PARTS[part] for part in several(one['of'])])} × (1 + {value})"
         yield from _labelled("allowance", f"{said} ({one['clause']})")
         if "value" not in one:
             for line in _pieces(one, units["length"]):
@@ -388,7 +236,7 @@ def _case_words(model: Model, raw: Mapping[str, Any]) -> Iterator[str]:
         yield from _labelled("allowance", "to be stated" if model.dynamic else "none")
     if "factors" in raw:
         yield from _labelled("factors", _factor_words(raw))
-    yield from _labelled("for", "; or ".join(map(_meant, case.applies)) or "every effect")
+    yield from _labelled("for", "; or ".join(map(applies_words, case.applies)) or "every effect")
 
 
 def _factor_words(raw: Mapping[str, Any], start: str = "") -> str:
@@ -449,11 +297,6 @@ def formula(rule: Mapping[str, Any]) -> str:
     return words
 
 
-def _meant(one: Applies) -> str:
-    sense = {1: "greatest ", 0: "", -1: "least "}[one.sense]
-    return f"{sense}{' or '.join(one.kinds) or 'effect'} {REGIONS[one.region]}".strip()
-
-
 def _parts_to_state(model: Model) -> list[Part]:
     """The parts that a dynamic factor which the engineer must state may be for."""
     if not model.dynamic:
@@ -478,15 +321,6 @@ def _typed(raw: int | Decimal) -> str:
     ('0.30', '50')
     """
     return str(int(raw)) if raw == int(raw) else format(raw, "f")
-
-
-def _listed(some: Sequence[int | str]) -> str:
-    *others, last = map(str, some)
-    return f"{', '.join(others)} and {last}" if others else last
-
-
-def _several(raw: Any) -> list[Any]:
-    return raw if isinstance(raw, list) else [raw]
 
 
 def _labelled(label: str, said: str) -> list[str]:

@@ -7,7 +7,7 @@ from collections.abc import Iterator, Sequence
 from calcpack.derive.kinds import EFFECT_KIND
 from calcpack.exact.numbers import printed
 from calcpack.exact.units import SYSTEMS
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 from calcpack.solution import Solution
 
 HEAD = ("effect", "load", "", "value", "unit", "lead axle at", "heading")

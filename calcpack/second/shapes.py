@@ -7,7 +7,7 @@ from fractions import Fraction
 from math import lcm
 from typing import NamedTuple
 
-from calcpack.exact.piecewise import Coefficients
+from calcpack.exact.polynomial import Coefficients
 
 State = tuple[Fraction, ...]
 """Of a shape at a place: height and slope, and what acts on the beam left of it, taken together: a

@@ -71,6 +71,7 @@ STATED = (
     "That these loads, their allowances and their distribution are the right ones is the "
     "preparer's statement; the governing standard in its edition in force decides."
 )
+FIRST_HOLDS = "Of several distributions of a load the first that holds for an effect counts."
 LINES_HOLD = (
     "Influence lines hold only while every bearing stays down or is anchored. Bending alone is "
     "considered; equilibrium of a determinate beam does not depend on its stiffness."
@@ -126,6 +127,8 @@ def _loads(solution: Solution) -> Iterator[Block]:
         for load in moving
     )
     yield Table(columns, rows)
+    if any(len(load.shares) > 1 for load in moving):
+        yield Paragraph((FIRST_HOLDS,))
     yield Paragraph((STATED,))
     notes = dict.fromkeys(note for load in moving if load.standard for note in load.standard.notes)
     if notes:

@@ -9,7 +9,7 @@ from calcpack.analysis import Line
 from calcpack.derive.kinds import DECIMALS, EFFECT_KIND, LINE_KIND
 from calcpack.exact.units import SYSTEMS
 from calcpack.model.loads import MovingLoad
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 from calcpack.sheets.blocks import Block, Column, Heading, Paragraph, Table, Text, Value
 from calcpack.sheets.stands import numbered_cases, stands
 from calcpack.sheets.tables import effect_title

@@ -4,15 +4,16 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 from fractions import Fraction
+from itertools import pairwise
 
 from calcpack.derive.kinds import DECIMALS, EFFECT_KIND
 from calcpack.exact.numbers import printed
 from calcpack.exact.units import SYSTEMS
-from calcpack.model.loads import MovingLoad
+from calcpack.model.loads import MovingLoad, Share
 from calcpack.model.request import Effect
 from calcpack.moving.absolute import Absolute
-from calcpack.moving.critical import Governing
 from calcpack.moving.envelope import Envelope, Point, Worst
+from calcpack.moving.governing import Governing
 from calcpack.sheets.blocks import Block, Column, Figure, Heading, Paragraph, Table, Text, Value
 from calcpack.sheets.envelope_figure import envelope_figure
 from calcpack.sheets.placements import placed_figure
@@ -35,7 +36,12 @@ ABSOLUTE = (
 NO_AXLE = "no axle"
 HAIR = Fraction(1, 10**8)
 """A section given to nine decimals is no nearer to where the classical rule has it."""
+BY_STRETCH = (
+    "Each stretch of a span with a distribution of its own is searched by itself, its ends "
+    "included; the greatest may also stand at such an end."
+)
 WORST = "Of the loads above the one that is worse at each point, each by itself and not together."
+WORST_OF_SHARED = "A load without a distribution at a point is not among those compared there."
 DRAWN = ("moment", "shear", "deflection")
 TITLES = {
     "reaction": "Reactions",
@@ -49,26 +55,60 @@ TITLES = {
 def envelope_blocks(solution: Solution) -> tuple[Block, ...]:
     """Every load's envelopes, each drawn and in a table, then the absolute maxima."""
     along = solution.along
-    if not along.envelopes:
+    if not (along.envelopes or along.unshared):
         return ()
     blocks: list[Block] = [Heading(1, ("Envelopes",)), Paragraph((WORDS,))]
     for load in solution.calculation.moving:
         blocks.append(Heading(2, ("Envelopes under ", load.name)))
         if cases := numbered_cases(load):
             blocks.append(Paragraph((cases,)))
+        if unshared := _unshared(solution, load):
+            blocks.append(Paragraph((unshared,)))
         for envelope in along.envelopes:
             if envelope.load is load:
                 blocks += _envelope(solution, envelope)
         found = [one for one in along.absolutes if one.load is load]
         if found:
-            blocks += [Paragraph((ABSOLUTE,), leads=True), _absolutes(solution, load, found)]
+            several = any(len(stretches) > 1 for stretches in _stretches(solution, load))
+            words = f"{ABSOLUTE} {BY_STRETCH}" if several else ABSOLUTE
+            blocks += [Paragraph((words,), leads=True), _absolutes(solution, load, found)]
             for one in found:
                 blocks += _absolute(solution, one)
     if along.worst:
         blocks += [Heading(2, ("Envelopes over all loads",)), Paragraph((WORST,))]
+        if along.unshared:
+            blocks.append(Paragraph((WORST_OF_SHARED,)))
         for kind, worst in along.worst.items():
             blocks += _worst(solution, kind, worst)
     return tuple(blocks)
+
+
+def _stretches(
+    solution: Solution, load: MovingLoad
+) -> list[tuple[tuple[Fraction, Fraction, Share | None], ...]]:
+    """Per span its stretches of one distribution of the moment."""
+    places = [support.at for support in solution.calculation.beam.supports]
+    return [load.shares_along("moment", *span) for span in pairwise(places)]
+
+
+def _unshared(solution: Solution, load: MovingLoad) -> str:
+    """What is not told of a load, since no distribution of it is stated there."""
+    told = {one.kind for one in solution.along.envelopes if one.load is load}
+    places: dict[str, dict[str, None]] = {}
+    for whose, effect in solution.along.unshared:
+        if whose is load:
+            places.setdefault(effect.kind, {})[effect.at] = None
+    words = [
+        f"{kind} at {', '.join(at)}" if kind in told else f"every {kind}"
+        for kind, at in places.items()
+    ]
+    words += [
+        f"the absolute maximum of span {number}"
+        for number, stretches in enumerate(_stretches(solution, load), start=1)
+        if any(share is None for *_, share in stretches)
+    ]
+    said = "; ".join(words)
+    return f"Not found, since no distribution of the load is stated for it: {said}." if said else ""
 
 
 def _worst(solution: Solution, kind: str, found: Sequence[Worst]) -> Iterator[Block]:

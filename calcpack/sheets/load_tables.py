@@ -2,31 +2,29 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from fractions import Fraction
 
 from calcpack.derive.kinds import DECIMALS
 from calcpack.derive.steps import LoadGroup
-from calcpack.exact.numbers import decimals_to_end, printed
+from calcpack.exact.numbers import printed
 from calcpack.exact.units import SYSTEMS
-from calcpack.model.loads import Applies, Axle, Case, Gap, MovingLoad, Share, Strip, Train
+from calcpack.model.loads import Axle, Case, MovingLoad, Share, Train
 from calcpack.sheets.blocks import Block, Column, Heading, Paragraph, Table, Text
+from calcpack.sheets.load_words import (
+    PARTS,
+    RELIEVING,
+    amount,
+    applies_words,
+    axles_words,
+    gap_words,
+    strip_words,
+)
 from calcpack.sheets.tables import step_table
 from calcpack.solution import Solution
 
-WHOLE = 6
 SHORT, ACROSS = 6, 3
 """So many axles stand under one another in any case; more of them in up to so many columns."""
-RELIEVING = {
-    "count": "Axles that lessen the effect count.",
-    "neglect": "Axles that lessen the effect are neglected one by one.",
-}
-REGIONS = {
-    "hogging": "where a uniform load on all spans causes a negative moment",
-    "interior": "at interior supports",
-    "everywhere": "",
-}
-PARTS = {"axles": "axles", "trailing": "trailing load", "uniform": "uniform load"}
 
 
 def load_blocks(solution: Solution, group: LoadGroup) -> Iterator[Block]:
@@ -36,10 +34,10 @@ def load_blocks(solution: Solution, group: LoadGroup) -> Iterator[Block]:
     if load.standard is not None:
         yield Paragraph((standard_words(load),))
     for train in _distinct(load.cases):
-        yield from _train(train, units["length"], units["force"], units["line load"])
+        yield from _train(train, units)
     relieving = {case.relieving for case in load.cases if case.trains}
     yield from (Paragraph((RELIEVING[one],)) for one in sorted(relieving))
-    yield _cases(load, units["length"], units["force"], units["line load"])
+    yield _cases(load, units)
     if any(one.region == "hogging" for case in load.cases for one in case.applies):
         yield Paragraph((_hogging(solution, load, units["length"]),))
     if len(load.cases) > 1:
@@ -83,16 +81,15 @@ def _distinct(cases: Sequence[Case]) -> list[Train]:
     return list(found.values())
 
 
-def _train(train: Train, length: str, force: str, line_load: str) -> Iterator[Block]:
+def _train(train: Train, units: Mapping[str, str]) -> Iterator[Block]:
     named = f"Train {train.name}" if train.name else "Train"
     axles = [axle for axle in train.axles if axle.weight.value]
     if axles:
-        whole = sum((axle.weight.value for axle in axles), Fraction(0))
-        words = f"{named}, {amount(whole)} {force} on {len(axles)} axles, from the foremost:"
+        words = f"{named}, {axles_words(axles, units)}, from the foremost:"
         yield Paragraph((words,), leads=True)
-        yield _axles(axles, length, force)
+        yield _axles(axles, units["length"], units["force"])
     for strip in train.strips:
-        yield Paragraph((_strip(strip, bool(axles), length, force, line_load),))
+        yield Paragraph((f"With it travels {strip_words(strip, bool(axles), units)}.",))
 
 
 def _axles(axles: Sequence[Axle], length: str, force: str) -> Table:
@@ -124,41 +121,7 @@ def _axle(number: int, axle: Axle) -> tuple[Text, ...]:
     return (str(number),), (amount(axle.weight.value),), (gap,)
 
 
-def _strip(strip: Strip, axles: bool, length: str, force: str, line_load: str) -> str:
-    if strip.of_weight and strip.length is not None:
-        what = f"{amount(strip.amount.value)} {force} over {amount(strip.length.value)} {length}"
-    elif strip.length is not None:
-        said = amount(strip.amount.value)
-        what = f"{said} {line_load} over {amount(strip.length.value)} {length}"
-    else:
-        what = f"{amount(strip.amount.value)} {line_load} without end"
-    axle = "ahead of the first axle" if strip.ahead else "behind the last axle"
-    if not axles:
-        axle = "ahead of its foremost point" if strip.ahead else "behind its foremost point"
-    extent = "only where it raises the effect" if strip.broken else "unbroken"
-    return f"With it travels {what}, from {amount(strip.start.value)} {length} {axle}, {extent}."
-
-
-def gap_words(gap: Gap) -> str:
-    """A spacing as it was stated.
-
-    >>> from calcpack.model.loads import Given
-    >>> gap_words(Gap((Given(Fraction(14), ""), Given(Fraction(30), "")), free=True))
-    '14 to 30'
-    """
-    values = [amount(tie.value) for tie in gap.ties]
-    if not gap.free:
-        return " or ".join(values)
-    return f"{values[0]} or more" if len(values) == 1 else " to ".join(values)
-
-
-def amount(value: Fraction) -> str:
-    """A number that was stated, with all its decimals as long as there are few."""
-    whole = decimals_to_end(value, WHOLE)
-    return printed(value, DECIMALS["number"] if whole is None else whole)
-
-
-def _cases(load: MovingLoad, length: str, force: str, line_load: str) -> Table:
+def _cases(load: MovingLoad, units: Mapping[str, str]) -> Table:
     columns = (
         Column("case", width=3),
         Column("stands", width=5),
@@ -168,17 +131,16 @@ def _cases(load: MovingLoad, length: str, force: str, line_load: str) -> Table:
     rows = tuple(
         (
             (case.name or load.name,),
-            ("; ".join(_stands(case, length, force, line_load)),),
+            ("; ".join(_stands(case, units)),),
             ("; ".join(_factors(case)) or "none",),
-            ("; or ".join(map(_for, case.applies)) or "every effect",),
+            ("; or ".join(map(applies_words, case.applies)) or "every effect",),
         )
         for case in load.cases
     )
     return Table(columns, rows)
 
 
-def _stands(case: Case, length: str, force: str, line_load: str) -> Iterator[str]:
-    number = 0
+def _stands(case: Case, units: Mapping[str, str]) -> Iterator[str]:
     for index, train in enumerate(case.trains):
         acting = [n for n, axle in enumerate(train.axles, start=1) if axle.acts]
         named = train.name or "the train"
@@ -187,16 +149,15 @@ def _stands(case: Case, length: str, force: str, line_load: str) -> Iterator[str
                 f" with only axle {', '.join(map(str, acting))}" if acting else " without axles"
             )
         if index:
-            named += f" behind it by {gap_words(case.gaps[index - 1])} {length}"
-        number += len(train.axles)
+            named += f" behind it by {gap_words(case.gaps[index - 1])} {units['length']}"
         yield named
     if case.concentrated:
         forces = " and ".join(amount(one.value) for one in case.concentrated)
         several = ", each in another span" if len(case.concentrated) > 1 else ""
-        yield f"{forces} {force} anywhere{several}"
+        yield f"{forces} {units['force']} anywhere{several}"
     if case.uniform is not None:
         said = amount(case.uniform.value)
-        yield f"{said} {line_load} wherever it raises the effect"
+        yield f"{said} {units['line load']} wherever it raises the effect"
     if case.trains and case.headings != ("right", "left"):
         yield f"heading {case.headings[0]}"
 
@@ -206,12 +167,6 @@ def _factors(case: Case) -> Iterator[str]:
         yield f"{PARTS[part]} × (1 + {amount(allowance.value)})"
     for factor in case.factors:
         yield f"all × {amount(factor.value)}"
-
-
-def _for(one: Applies) -> str:
-    senses = {1: "greatest ", 0: "", -1: "least "}
-    kinds = " or ".join(one.kinds) or "effect"
-    return f"{senses[one.sense]}{kinds} {REGIONS[one.region]}".strip()
 
 
 def share_words(load: MovingLoad, names: dict[Fraction, str]) -> str:

@@ -12,7 +12,7 @@ from calcpack.exact.units import SYSTEMS
 from calcpack.model.beam import Beam
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Candidate, Governing
+from calcpack.moving.governing import Candidate, Governing
 from calcpack.moving.placement import Group, Position, joined
 from calcpack.sheets.blocks import (
     Block,

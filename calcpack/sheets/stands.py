@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from calcpack.derive.kinds import DECIMALS
 from calcpack.model.loads import MovingLoad
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 from calcpack.sheets.blocks import Text, Value
 
 

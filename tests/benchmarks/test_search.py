@@ -25,8 +25,9 @@ from pytest_benchmark.fixture import BenchmarkFixture
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import MovingLoad
 from calcpack.model.request import EffectKind
-from calcpack.moving.critical import Target, governing, greatest
+from calcpack.moving.critical import governing, greatest
 from calcpack.moving.kernels import LineSet
+from calcpack.moving.target import Target
 
 Floats = NDArray[np.float64]
 SENSES: tuple[Literal[1, -1], ...] = (1, -1)

@@ -19,7 +19,7 @@ from calcpack.exact.piecewise import Piecewise
 from calcpack.model.beam import Beam
 from calcpack.model.loads import Applies, MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Target
+from calcpack.moving.target import Target
 
 BEAM = make_beam(14, [(0, "pin"), (10, "roller")], sections=[4])
 EFFECTS = [

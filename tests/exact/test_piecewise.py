@@ -8,7 +8,6 @@ from random import Random
 
 import numpy as np
 import pytest
-from numpy.polynomial import Polynomial
 from scipy.interpolate import PPoly  # type: ignore[import-untyped]
 
 from calcpack.exact.piecewise import Piecewise, Side
@@ -116,35 +115,6 @@ def test_mirrored_and_antiderivative(seed: int) -> None:
         assert image.right(14 - at) == ours.left(at)
         assert area.left(at) == area.right(at) == ours.integral(Fraction(2), at)
     assert image.mirrored() == ours
-
-
-@pytest.mark.parametrize("seed", SEEDS)
-def test_jumps_put_the_function_together_again(seed: int) -> None:
-    """Added up from left to right, each about its own breakpoint, as numpy's polynomials; right of
-    the last breakpoint what was said to follow is left."""
-    rng = Random(seed)
-    ours = random_piecewise(rng, rng.randint(0, 4))
-    after = tuple(Fraction(rng.randint(-9, 9)) for _ in range(rng.randint(1, 5)))
-    jumps = ours.jumps(after)
-    assert len(jumps) == len(ours.breaks)
-    theirs = reference(ours)
-    whole = Polynomial([0.0])
-    for count, (at, jump) in enumerate(zip(ours.breaks, jumps, strict=True)):
-        whole = whole + Polynomial([float(one) for one in jump])(Polynomial([-float(at), 1]))
-        if count + 1 < len(ours.breaks):
-            for part in (0.1, 0.5, 0.9):
-                x = float(at + (ours.breaks[count + 1] - at) * Fraction(part))
-                assert whole(x) == pytest.approx(float(theirs(x)), abs=1e-6)
-    beyond = sum(float(value) * 0.7**power for power, value in enumerate(after))
-    assert whole(float(ours.breaks[-1]) + 0.7) == pytest.approx(beyond, abs=1e-6)
-
-
-def test_what_continues_jumps_by_nothing() -> None:
-    """x² on (0, 4), with a corner of size 3 at 2: value and curvature do not change there."""
-    line = Piecewise.from_pieces([(0, 2, (0, 0, 1)), (2, 4, (4, 7, 1))])
-    assert [*line.jumps((Fraction(0),))[1]] == [0, 3, 0]
-    parabola = Piecewise.from_pieces([(0, 4, (0, 0, 1))])
-    assert [*parabola.jumps((Fraction(16), Fraction(8), Fraction(1)))[1]] == [0, 0, 0]
 
 
 @pytest.mark.parametrize("seed", SEEDS)

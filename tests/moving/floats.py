@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import Case, Gap, Strip
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 
 Floats = NDArray[np.float64]
 Position = tuple[float, list[float]]

@@ -19,7 +19,7 @@ from making import lines_of
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import Case, MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Candidate, Governing
+from calcpack.moving.governing import Candidate, Governing
 from calcpack.moving.placement import axle_shares
 from calcpack.second.stiffness import Ordinates, ordinates
 from calcpack.second.sweep import swept_case

@@ -12,7 +12,7 @@ from making import broken, line_of
 
 from calcpack.exact.piecewise import Piecewise, Side
 from calcpack.model.loads import Heading
-from calcpack.moving.critical import Governing
+from calcpack.moving.governing import Governing
 from calcpack.moving.placement import axle_shares, rate
 
 SENSES: tuple[Literal[1, -1], ...] = (1, -1)

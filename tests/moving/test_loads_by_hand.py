@@ -12,7 +12,9 @@ from making import broken, line_of
 
 from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import Applies, Case, MovingLoad, Share, Train
-from calcpack.moving.critical import Governing, Target, applies, governing, greatest
+from calcpack.moving.critical import governing, greatest
+from calcpack.moving.governing import Governing
+from calcpack.moving.target import Target, applies
 
 SPAN = make_beam(10, [(0, "pin"), (10, "roller")], sections=[5])
 MIDSPAN = line_of(SPAN, "moment", "1")

@@ -24,7 +24,9 @@ from calcpack.exact.piecewise import Piecewise
 from calcpack.model.beam import Beam
 from calcpack.model.loads import Case, Gap, MovingLoad
 from calcpack.model.request import Effect
-from calcpack.moving.critical import Governing, Target, governing
+from calcpack.moving.critical import governing
+from calcpack.moving.governing import Governing
+from calcpack.moving.target import Target
 
 SENSES: tuple[Literal[1, -1], ...] = (1, -1)
 DETERMINATE, INDETERMINATE = range(24), range(100, 116)
