@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 
-from calcpack.analysis import ELASTIC, Line, analyse
+from calcpack.analysis import ELASTIC, Analysis, Line, analyse
 from calcpack.derive.area_steps import area_group
 from calcpack.derive.book import Book
 from calcpack.derive.checks import SecondMethods, conversion_of, swept_value
@@ -17,14 +17,13 @@ from calcpack.derive.force_steps import write_force_method
 from calcpack.derive.influence_steps import line_group
 from calcpack.derive.kinds import DECIMALS, EFFECT_KIND
 from calcpack.derive.load_steps import load_group
-from calcpack.derive.placement_steps import placement_group
+from calcpack.derive.placement_steps import PlacementWriter
 from calcpack.derive.settlement_steps import settlement_group
 from calcpack.derive.shape import Shape
 from calcpack.derive.steps import AreaGroup, DeflectionGroup, Derivation, LineGroup, PlacementGroup
 from calcpack.elastic.compatibility import ForceMethod, settled
 from calcpack.envelopes import Along, along_beam, count_of_reports, target_of
 from calcpack.exact.numbers import printed
-from calcpack.exact.piecewise import Piecewise
 from calcpack.model.loads import MovingLoad, Permanent
 from calcpack.model.request import Calculation, Detail, Effect
 from calcpack.moving.critical import governing
@@ -32,8 +31,6 @@ from calcpack.moving.governing import Governing
 from calcpack.moving.kernels import LineSet
 from calcpack.moving.placement import Sense
 from calcpack.statics.influence import value_of
-from calcpack.statics.plan import PlanStep
-from calcpack.statics.stability import Classification
 from calcpack.statics.system import System
 
 SENSES: tuple[Sense, ...] = (1, -1)
@@ -70,20 +67,13 @@ class Settled:
 
 
 @dataclass(frozen=True)
-class Solution:
+class Solution(Analysis):
     """All that was found for one calculation; exact but for ``second`` and ``swept``."""
 
     calculation: Calculation
-    system: System
-    classification: Classification
-    plan: tuple[PlanStep, ...]
-    method: ForceMethod | None
-    unknowns: Mapping[Effect, Piecewise]
-    lines: tuple[Line, ...]
     placements: tuple[Placement, ...]
     settled: tuple[Settled, ...]
     along: Along
-    second: SecondMethods
     derivation: Derivation
 
     @cached_property
@@ -148,28 +138,13 @@ def solve(calculation: Calculation, report: Report = unheard) -> Solution:
     settled_cases = tuple(
         _settled(calculation, found.system, found.method, case) for case in calculation.permanent
     )
-    derivation = derive(
-        Book(calculation),
-        found.plan,
-        found.method,
-        found.unknowns,
-        found.lines,
-        placements,
-        settled_cases,
-    )
     return Solution(
-        calculation,
-        found.system,
-        found.classification,
-        found.plan,
-        found.method,
-        found.unknowns,
-        found.lines,
-        placements,
-        settled_cases,
-        along,
-        found.second,
-        derivation,
+        **vars(found),
+        calculation=calculation,
+        placements=placements,
+        settled=settled_cases,
+        along=along,
+        derivation=_derive(Book(calculation), found, placements, settled_cases),
     )
 
 
@@ -221,22 +196,16 @@ def _placements(
             yield Placement(load, line.effect, greatest, least, (swept[0], swept[1]))
 
 
-def derive(
-    book: Book,
-    plan: Sequence[PlanStep],
-    method: ForceMethod | None,
-    unknowns: Mapping[Effect, Piecewise],
-    lines: Sequence[Line],
-    placements: Sequence[Placement],
-    settled_cases: Sequence[Settled],
+def _derive(
+    book: Book, found: Analysis, placements: Sequence[Placement], settled_cases: Sequence[Settled]
 ) -> Derivation:
     """Write every step of the package in its order."""
-    elastic = write_force_method(book, method) if method else None
-    for step in plan:
-        line_group(book, step.unknown, step, unknowns[step.unknown])
+    elastic = write_force_method(book, found.method) if found.method else None
+    for step in found.plan:
+        line_group(book, step.unknown, step, found.unknowns[step.unknown])
     shapes: dict[Effect, Shape] = {}
     areas: dict[Effect, AreaGroup] = {}
-    in_full = [line for line in lines if book.calculation.detail_of(line.effect) != "table"]
+    in_full = [line for line in found.lines if book.calculation.detail_of(line.effect) != "table"]
     for line in in_full:
         if line.cut is not None:
             line_group(book, line.effect, line.cut, line.line)
@@ -251,14 +220,14 @@ def derive(
         areas[line.effect] = area_group(book, shape, line.line)
     if elastic is not None:
         down = conversion_of(book.calculation.units, Effect("deflection", "", Fraction(0)))
-        for one in settled_cases:
-            settlement_group(elastic, one.case, down, one.unknowns, one.effects)
+        for settling in settled_cases:
+            settlement_group(elastic, settling.case, down, settling.unknowns, settling.effects)
     by_effect = {line.effect: line.line for line in in_full}
     loads = {load.path: load_group(book, load) for load in book.calculation.moving}
-    for found in placements:
-        if found.effect in by_effect:
-            for extreme in (found.greatest, found.least):
-                effect = found.effect
-                load, line_ = loads[found.load.path], by_effect[effect]
-                placement_group(book, load, areas[effect], shapes[effect], line_, extreme)
+    for one in placements:
+        if one.effect in by_effect:
+            for extreme in (one.greatest, one.least):
+                effect = one.effect
+                load, line_ = loads[one.load.path], by_effect[effect]
+                PlacementWriter(book, load, areas[effect], shapes[effect], line_, extreme).write()
     return book.close()

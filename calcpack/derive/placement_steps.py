@@ -22,25 +22,8 @@ from calcpack.statics.system import key_of
 Terms = list[tuple[int, Formula]]
 
 
-def placement_group(
-    book: Book,
-    load: LoadGroup,
-    areas: AreaGroup,
-    shape: Shape,
-    line: Piecewise,
-    governing: Governing,
-) -> PlacementGroup:
-    """Write the governing value from the inputs: places, ordinates, sums, factors."""
-    writer = _Placement(book, load, areas, shape, line, governing)
-    writer.write()
-    number_, effect = writer.number, areas.effect
-    group = PlacementGroup(number_, load.load, effect, governing, tuple(writer.steps))
-    book.close_group(group)
-    return group
-
-
-class _Placement:
-    """Collects the steps of one placement in their order."""
+class PlacementWriter:
+    """Writes one governing value from the inputs: places, ordinates, sums, factors."""
 
     def __init__(
         self,
@@ -61,7 +44,8 @@ class _Placement:
         self.steps: list[Step] = []
         self.places: dict[int, Step] = {}
 
-    def write(self) -> None:
+    def write(self) -> PlacementGroup:
+        """Every step in its order; the last one is the value."""
         found = self.governing
         parts: list[tuple[Part, Formula]] = []
         if found.case is not None:
@@ -74,6 +58,10 @@ class _Placement:
             parts += self._concentrated(found.case)
             parts += self._uniform(found.case)
         self._value(parts)
+        steps = tuple(self.steps)
+        proof = PlacementGroup(self.number, self.load.load, self.effect, found, steps)
+        self.book.close_group(proof)
+        return proof
 
     def _value(self, parts: list[tuple[Part, Formula]]) -> None:
         """The sum of each part x (1 + its allowance), times the factors and the distribution."""

@@ -255,7 +255,7 @@ class Piecewise:
         >>> Piecewise.from_pieces([(0, 2, (0, 1))]).integral(Fraction(0), Fraction(2))
         Fraction(2, 1)
         """
-        whole = self._antiderivative
+        whole = self.antiderivative()
         return whole.left(end) - whole.left(start)
 
     def signed_runs(self) -> tuple[tuple[Fraction, Fraction, int], ...]:
