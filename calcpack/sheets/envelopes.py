@@ -31,7 +31,8 @@ WORDS = (
 ABSOLUTE = (
     "The greatest sagging moment of each span, section and place of the load found together: the "
     "governing value is closed in on along the span, and the section given as a decimal of up to "
-    "nine places, for which the value is exact. Without uniform load it stands under an axle."
+    "nine places, for which the value is exact. Inside the span and without uniform load it stands "
+    "under an axle."
 )
 NO_AXLE = "no axle"
 HAIR = Fraction(1, 10**8)
