@@ -38,6 +38,7 @@ SEARCHED = 9
 """Decimals of a place found where the rate of change is zero."""
 MOST_TIES = 4
 """More ties are counted, not listed."""
+STAYS_AWAY = "No position of the load works in this sense: it stays away."
 EXTREMES = {1: "greatest", -1: "least"}
 
 
@@ -172,7 +173,7 @@ def _placement(solution: Solution, group: PlacementGroup, swept: float) -> Itera
     title = f"{effect_title(group.effect)}: {EXTREMES[found.sense]} under {group.load.name}"
     yield Heading(2, (title,), group.number)
     if found.case is None:
-        yield Paragraph(("No position of the load works in this sense: it stays away.",))
+        yield Paragraph((STAYS_AWAY,), leads=True)
     else:
         line = next(one.line for one in solution.lines if one.effect == group.effect)
         kind = LINE_KIND[group.effect.kind]
@@ -205,16 +206,16 @@ def placed_figure(
 def _standing(load: MovingLoad, found: Governing, length: str) -> Iterator[Block]:
     case = found.case
     if case is not None and case.name and len(load.cases) > 1:
-        yield Paragraph((f"Governing case: {case.name}.",))
+        yield Paragraph((f"Governing case: {case.name}.",), leads=True)
     if case is None or found.position is None:
         return
     position = found.position
     for group in position.groups:
-        yield Paragraph(tuple(_group_words(position, group, length)))
+        yield Paragraph(tuple(_group_words(position, group, length)), leads=True)
     for standing in ("off the beam", "neglected", "does not act"):
         axles = [str(s.axle + 1) for s in found.axles if s.standing == standing and s.weight]
         if axles:
-            yield Paragraph((f"Axle {', '.join(axles)}: {standing}.",))
+            yield Paragraph((f"Axle {', '.join(axles)}: {standing}.",), leads=True)
 
 
 def _group_words(position: Position, group: Group, length: str) -> Iterator[str | Value]:
@@ -247,7 +248,8 @@ def _proof(solution: Solution, group: PlacementGroup, swept: float) -> Iterator[
             Value(found.static, decimals, unit),
             ". ",
         ]
-    words.append(f"{found.looked_at} places were looked at. ")
+    if found.looked_at:
+        words.append(f"{found.looked_at} places were looked at. ")
     if found.rates is not None:
         words += [
             "Change of the static effect of axles and trailing loads per unit of travel to the "
