@@ -13,6 +13,7 @@ from loads import make_load
 from making import make_calculation, make_effect
 
 from calcpack.intake import read
+from calcpack.model.beam import SupportKind
 from calcpack.model.request import Calculation
 from calcpack.results import results
 from calcpack.sheets.blocks import Paragraph
@@ -195,15 +196,26 @@ def test_absolute_maxima_of_a_continuous_beam() -> None:
         assert max(found) == pytest.approx(float(one.found.value), rel=1e-4)
 
 
-def test_the_absolute_maximum_at_a_fixed_support() -> None:
-    """An axle of 10 on a span of 10, fixed at A, and 4 beyond B: at the tip it causes -40 at B and,
-    the carry-over factor being 1/2 (textbooks of structural analysis), 20 at A; in the span at most
-    0.174 x 10 x 10 = 17.4 (handbooks' beam fixed at one end and supported at the other; value from
-    memory)."""
-    beam = make_beam(14, [(0, "fixed"), (10, "roller")], sections=[5])
+THIRD = Fraction(1, 3)
+
+
+@pytest.mark.parametrize(
+    ("fixed", "roller", "length"),
+    [(0, 10, 14), (THIRD, 10 + THIRD, 14 + THIRD), (14 + THIRD, 4, 14 + THIRD)],
+)
+def test_the_absolute_maximum_at_a_fixed_support(
+    fixed: Fraction, roller: Fraction, length: Fraction
+) -> None:
+    """An axle of 10 on a span of 10 or 10 1/3 with one end fixed, and 4 beyond its roller: at the
+    tip it causes -40 there and, the carry-over factor being 1/2 (textbooks of structural analysis),
+    20 at the fixed end; in the span at most 0.174 x 10 x 10 1/3 = 18.0 (handbooks' beam fixed at
+    one end and supported at the other; value from memory)."""
+    held: list[tuple[Fraction, SupportKind]] = [(fixed, "fixed"), (roller, "roller")]
+    beam = make_beam(length, sorted(held), sections=[6])
     effects = [make_effect(beam, "moment", "1")]
     (found,) = results(solve(make_calculation(beam, effects, [make_load((10, 0))])))["absolute"]
-    assert (found["at"], found["value"]) == (0, 20)
+    assert found["value"] == 20
+    assert found["at"] == pytest.approx(float(fixed), abs=1e-12)
 
 
 def _greatest(calculation: Calculation) -> list[float]:

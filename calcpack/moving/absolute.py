@@ -92,7 +92,7 @@ def absolute_maximum(
         return None
     for _ in range(ROUNDS):
         around = [
-            [round(hill + step * part / ASIDE, 9) for part in range(-ASIDE, ASIDE + 1)]
+            [_section(hill + step * part / ASIDE, stretch) for part in range(-ASIDE, ASIDE + 1)]
             for hill in hills
         ]
         tried = [[one for one in some if start <= one <= end] for some in around]
@@ -107,6 +107,12 @@ def absolute_maximum(
     ]
     best = min(judged, key=lambda one: (-one[1].value, decimals_to_end(one[0], 9) or 0, one[0]))
     return best if best[1].value > 0 else None
+
+
+def _section(at: Fraction, stretch: Stretch) -> Fraction:
+    """The nearest decimal of nine places; the end of the stretch if that is nearest to it too."""
+    decimal = round(at, 9)
+    return next((end for end in stretch if round(end, 9) == decimal), decimal)
 
 
 def _polished(
